@@ -1,0 +1,52 @@
+import node from '@astrojs/node';
+import react from '@astrojs/react';
+import tailwindcss from '@tailwindcss/vite';
+import { defineConfig } from 'astro/config';
+
+const port = Number(process.env.PORT || 4321);
+const publicUrl = new URL(process.env.PUBLIC_URL || `http://localhost:${port}`);
+
+export default defineConfig({
+  site: publicUrl.origin,
+  output: 'static',
+  adapter: node({ mode: 'middleware' }),
+  integrations: [react()],
+  devToolbar: { enabled: false },
+  server: { port, host: '127.0.0.1' },
+  // Without this list Astro takes every request for `http://localhost` and refuses each form POST. No port means any port.
+  security: {
+    checkOrigin: true,
+    allowedDomains: [
+      { hostname: 'localhost', protocol: 'http' },
+      { hostname: '127.0.0.1', protocol: 'http' },
+      { hostname: publicUrl.hostname, protocol: publicUrl.protocol.replace(':', '') },
+    ],
+  },
+  // The front server adds what a page's own <meta> cannot carry: frame-ancestors, form-action.
+  experimental: {
+    csp: {
+      directives: [
+        "default-src 'self'",
+        "img-src 'self' blob: data:",
+        "font-src 'self'",
+        "connect-src 'self'",
+        "media-src 'self' blob:",
+        "worker-src 'self'",
+        "manifest-src 'self'",
+        "object-src 'none'",
+        "frame-src 'none'",
+        "base-uri 'self'",
+      ],
+    },
+  },
+  vite: {
+    plugins: [tailwindcss()],
+    // Astro 5 carries zod 3; bundling keeps the server on the zod 4 that the source imports.
+    ssr: { noExternal: ['zod'] },
+    worker: { format: 'es' },
+    server: {
+      strictPort: true,
+      watch: { ignored: ['**/.data/**', '**/dist/**', '**/.shots/**', '**/tests/**', '**/coverage/**'] },
+    },
+  },
+});
