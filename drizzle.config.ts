@@ -2,7 +2,6 @@ import { defineConfig } from 'drizzle-kit';
 
 export default defineConfig({
   dialect: 'postgresql',
-  schema: './src/server/db/schema.ts',
+  schema: './src/server/db/schema/*.ts',
   out: './drizzle',
-  casing: 'snake_case',
 });
