@@ -1,0 +1,10 @@
+/// <reference path="../.astro/types.d.ts" />
+
+declare namespace App {
+  interface Locals {
+    services: import('./server/services').Services;
+    user: import('./commission/permissions').Actor;
+    /** Random id of this browser, in a cookie; ties a guest's uploads and refused forms to it. */
+    browserId: string;
+  }
+}

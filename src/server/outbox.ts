@@ -1,0 +1,45 @@
+import { sql } from 'drizzle-orm';
+import { uuidv7 } from 'uuidv7';
+import type { Db } from './db/client';
+import { mails } from './db/schema/studio';
+import type { LetterId } from './mail/letter-ids';
+
+/** A mail to be sent once its cause is committed. `cause` makes it unique: "M12:<ledger entry id>". */
+export interface NewMail {
+  letter: LetterId;
+  to: string;
+  cause: string;
+  commissionId?: string;
+  data: Record<string, unknown>;
+  at: Date;
+}
+
+/**
+ * Writes the outbox row and its job in the caller's transaction: rolled back, neither was ever there.
+ * A second row for the same cause is left out. Returns the row's id, or null when it was there already.
+ */
+export async function queueMail(db: Db, mail: NewMail): Promise<string | null> {
+  const [row] = await db
+    .insert(mails)
+    .values({
+      id: uuidv7(),
+      letter: mail.letter,
+      to: mail.to,
+      cause: mail.cause,
+      commissionId: mail.commissionId ?? null,
+      data: mail.data,
+      createdAt: mail.at,
+    })
+    .onConflictDoNothing({ target: mails.cause })
+    .returning({ id: mails.id });
+  if (!row) return null;
+  await queueJob(db, 'send-mail', { mailId: row.id }, `mail:${row.id}`);
+  return row.id;
+}
+
+/** Adds a job in the caller's transaction. Jobs of one `key` are merged while they wait. */
+export async function queueJob(db: Db, task: string, payload: Record<string, string>, key: string): Promise<void> {
+  await db.execute(
+    sql`select graphile_worker.add_job(${task}::text, payload := ${JSON.stringify(payload)}::json, job_key := ${key}::text, max_attempts := 20)`,
+  );
+}
