@@ -98,7 +98,10 @@ export const SCRAP_CAUSES = {
   blow: { name: 'Blow', plain: 'Steam or gas from the mould blew a cavity into the casting.' },
   'core-shift': { name: 'Core shift', plain: 'The core that forms the hollow moved, so one wall came out thin.' },
   cracked: { name: 'Cracked', plain: 'The casting tore as it cooled and shrank.' },
-  inclusion: { name: 'Sand or dross in the metal', plain: 'A bit of the mould or of the metal’s skin was carried into the casting.' },
+  inclusion: {
+    name: 'Sand or dross in the metal',
+    plain: 'A bit of the mould or of the metal’s skin was carried into the casting.',
+  },
   runout: { name: 'Run-out', plain: 'Metal found a way out of the mould before it froze.' },
 } as const;
 export type ScrapCause = keyof typeof SCRAP_CAUSES;

@@ -30,6 +30,10 @@ export function done<T>(value: T): { ok: true; value: T } {
 }
 
 /** Makes a refusal. */
-export function refuse(code: ProblemCode, message: string, fields?: Record<string, string>): { ok: false; problem: Problem } {
+export function refuse(
+  code: ProblemCode,
+  message: string,
+  fields?: Record<string, string>,
+): { ok: false; problem: Problem } {
   return { ok: false, problem: fields ? { code, message, fields } : { code, message } };
 }

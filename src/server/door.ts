@@ -53,9 +53,12 @@ async function readRaw({ request, url }: DoorContext): Promise<Outcome<Record<st
   if (known) return done(known);
   const type = request.headers.get('content-type') ?? '';
   const origin = request.headers.get('origin');
-  if (origin && origin !== url.origin) return refuse('not-allowed', 'This request came from another site and was not carried out.');
+  if (origin && origin !== url.origin)
+    return refuse('not-allowed', 'This request came from another site and was not carried out.');
   try {
-    const value = type.startsWith('application/json') ? ((await request.json()) as unknown) : fromForm(await request.formData());
+    const value = type.startsWith('application/json')
+      ? ((await request.json()) as unknown)
+      : fromForm(await request.formData());
     if (typeof value !== 'object' || value === null || Array.isArray(value)) {
       return refuse('invalid', 'The request must be one object of named values.');
     }
@@ -84,7 +87,8 @@ export function problemFrom(error: z.ZodError): Problem {
     fields[name] ??= issue.message;
   }
   const count = Object.keys(fields).length;
-  const message = count === 1 ? Object.values(fields)[0]! : `${count} entries need another look. Each says why beside it.`;
+  const message =
+    count === 1 ? Object.values(fields)[0]! : `${count} entries need another look. Each says why beside it.`;
   return { code: 'invalid', message, fields };
 }
 
@@ -136,7 +140,9 @@ async function keepTyped({ request, locals }: DoorContext, problem: Problem): Pr
   const { services, browserId } = locals;
   const typed = READ_TWICE.get(request) ?? {};
   const values = Object.fromEntries(
-    Object.entries(typed).filter((entry): entry is [string, string | string[]] => typeof entry[1] === 'string' || Array.isArray(entry[1])),
+    Object.entries(typed).filter(
+      (entry): entry is [string, string | string[]] => typeof entry[1] === 'string' || Array.isArray(entry[1]),
+    ),
   );
   const id = uuidv7();
   const expiresAt = new Date(services.now().getTime() + 60 * 60_000);
@@ -158,6 +164,8 @@ export async function takeFormReturn({ url, locals }: DoorContext): Promise<Form
   const [row] = await services.db
     .select()
     .from(formReturns)
-    .where(and(eq(formReturns.id, id), eq(formReturns.browserId, browserId), gt(formReturns.expiresAt, services.now())));
+    .where(
+      and(eq(formReturns.id, id), eq(formReturns.browserId, browserId), gt(formReturns.expiresAt, services.now())),
+    );
   return row ? { values: row.values, problem: { ...row.problem, code: row.problem.code as ProblemCode } } : null;
 }

@@ -57,7 +57,10 @@ export async function moveDeal(
   change: DealChange,
 ): Promise<Outcome<DealState>> {
   if (!mayMove(commission.deal, change.move, change.mover)) {
-    return refuse('conflict', 'This commission has moved on since the page was opened. Reload it to see where it stands.');
+    return refuse(
+      'conflict',
+      'This commission has moved on since the page was opened. Reload it to see where it stands.',
+    );
   }
   const to: DealState = DEAL_MOVES[change.move].to;
   const moved = await db
@@ -66,7 +69,10 @@ export async function moveDeal(
     .where(and(eq(commissions.id, commission.id), eq(commissions.deal, commission.deal)))
     .returning({ id: commissions.id });
   if (moved.length === 0) {
-    return refuse('conflict', 'Somebody else changed this commission a moment ago. Reload the page to see where it stands.');
+    return refuse(
+      'conflict',
+      'Somebody else changed this commission a moment ago. Reload the page to see where it stands.',
+    );
   }
   await recordEvent(db, { ...change, commissionId: commission.id, code: change.move, from: commission.deal, to });
   return done(to);

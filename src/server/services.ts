@@ -30,7 +30,9 @@ export function createServices(config: Config, overrides: Partial<Services> = {}
     log,
     now: () => new Date(),
     stripe: overrides.stripe ?? openStripe(config),
-    resend: overrides.resend ?? new Resend(config.resendApiKey, config.resendBaseUrl ? { baseUrl: config.resendBaseUrl } : {}),
+    resend:
+      overrides.resend ??
+      new Resend(config.resendApiKey, config.resendBaseUrl ? { baseUrl: config.resendBaseUrl } : {}),
     ...database,
     ...overrides,
   };

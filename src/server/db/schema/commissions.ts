@@ -1,5 +1,15 @@
 import {
-  bigserial, boolean, date, index, integer, jsonb, pgEnum, pgTable, text, unique, uuid,
+  bigserial,
+  boolean,
+  date,
+  index,
+  integer,
+  jsonb,
+  pgEnum,
+  pgTable,
+  text,
+  unique,
+  uuid,
 } from 'drizzle-orm/pg-core';
 import { DEAL_STATES } from '../../../commission/deal';
 import type { Problem } from '../../../commission/problem';

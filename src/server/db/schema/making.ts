@@ -129,7 +129,9 @@ export const photos = pgTable(
     alt: text('alt').notNull().default(''),
     sha256: text('sha256').notNull(),
     /** Keys by size: { large, medium, thumb } with their pixel sizes. */
-    files: jsonb('files').$type<Record<'large' | 'medium' | 'thumb', { key: string; width: number; height: number }>>().notNull(),
+    files: jsonb('files')
+      .$type<Record<'large' | 'medium' | 'thumb', { key: string; width: number; height: number }>>()
+      .notNull(),
     /** Shown on the customer's page. */
     shared: boolean('shared').notNull().default(true),
     takenAt: instant('taken_at').notNull(),

@@ -60,7 +60,13 @@ export const acceptances = pgTable('acceptances', {
   acceptedAt: instant('accepted_at').notNull(),
 });
 
-export const stageTrigger = pgEnum('stage_trigger', ['acceptance', 'gate-a', 'before-dispatch', 'after-delivery', 'rework']);
+export const stageTrigger = pgEnum('stage_trigger', [
+  'acceptance',
+  'gate-a',
+  'before-dispatch',
+  'after-delivery',
+  'rework',
+]);
 
 /** A stage payment agreed in a quote. Paid, owed and overdue are computed from the ledger. */
 export const stagePayments = pgTable(
@@ -83,7 +89,10 @@ export const stagePayments = pgTable(
     /** Set once, when the trigger happens. */
     dueAt: instant('due_at'),
   },
-  (t) => [unique('stage_payments_place').on(t.quoteId, t.position), index('stage_payments_commission').on(t.commissionId)],
+  (t) => [
+    unique('stage_payments_place').on(t.quoteId, t.position),
+    index('stage_payments_commission').on(t.commissionId),
+  ],
 );
 
 export const ledgerKind = pgEnum('ledger_kind', ['received', 'refund', 'fee', 'credit', 'written-off']);

@@ -15,7 +15,15 @@ export const rateVersions = pgTable('rate_versions', {
 export const studioSettings = pgTable('studio_settings', {
   id: text('id').primaryKey().default('studio'),
   settings: jsonb('settings')
-    .$type<{ name: string; place: string; refPrefix: string; timeZone: string; replyTo: string; mark: string; vatNumber?: string }>()
+    .$type<{
+      name: string;
+      place: string;
+      refPrefix: string;
+      timeZone: string;
+      replyTo: string;
+      mark: string;
+      vatNumber?: string;
+    }>()
     .notNull(),
 });
 
