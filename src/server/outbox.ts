@@ -2,21 +2,28 @@ import { sql } from 'drizzle-orm';
 import { uuidv7 } from 'uuidv7';
 import type { Db } from './db/client';
 import { mails } from './db/schema/studio';
+import { parseLetterData, type LetterData } from './mail/letter-data';
 import type { LetterId } from './mail/letter-ids';
 
-/** A mail to be sent once its cause is committed. `cause` makes it unique: "M12:<ledger entry id>". */
-export interface NewMail {
-  letter: LetterId;
+interface Queued<L extends LetterId> {
+  letter: L;
   to: string;
   cause: string;
   commissionId?: string;
-  data: Record<string, unknown>;
+  data: LetterData[L];
   at: Date;
 }
 
 /**
+ * A mail to be sent once its cause is committed. `cause` makes it unique: "M12:<ledger entry id>".
+ * `data` is what that letter needs, as `mail/letter-data` tells.
+ */
+export type NewMail = { [L in LetterId]: Queued<L> }[LetterId];
+
+/**
  * Writes the outbox row and its job in the caller's transaction: rolled back, neither was ever there.
  * A second row for the same cause is left out. Returns the row's id, or null when it was there already.
+ * Throws when `data` is not what the letter needs: a bug of the caller, told before anything is written.
  */
 export async function queueMail(db: Db, mail: NewMail): Promise<string | null> {
   const [row] = await db
@@ -27,7 +34,7 @@ export async function queueMail(db: Db, mail: NewMail): Promise<string | null> {
       to: mail.to,
       cause: mail.cause,
       commissionId: mail.commissionId ?? null,
-      data: mail.data,
+      data: parseLetterData(mail.letter, mail.data),
       createdAt: mail.at,
     })
     .onConflictDoNothing({ target: mails.cause })
