@@ -86,7 +86,10 @@ export const stagePayments = pgTable(
     netMinor: integer('net_minor').notNull(),
     taxMinor: integer('tax_minor').notNull(),
     grossMinor: integer('gross_minor').notNull(),
-    /** Set once, when the trigger happens. */
+    /**
+     * Pay-by instant, set once when the trigger happens: 7 days after acceptance and after gate A, 14 days after the
+     * piece is finished. Null means later.
+     */
     dueAt: instant('due_at'),
   },
   (t) => [
