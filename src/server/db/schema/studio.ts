@@ -1,4 +1,4 @@
-import { index, integer, jsonb, pgEnum, pgTable, text, uuid } from 'drizzle-orm/pg-core';
+import { type AnyPgColumn, index, integer, jsonb, pgEnum, pgTable, text, uuid } from 'drizzle-orm/pg-core';
 import type { StudioRates } from '../../../commission/rates';
 import { commissions } from './commissions';
 import { instant, users } from './people';
@@ -23,11 +23,15 @@ export const studioSettings = pgTable('studio_settings', {
       replyTo: string;
       mark: string;
       vatNumber?: string;
+      /** Local times "HH:MM" between which no mail leaves but receipts and sign-in; null sends at any hour. */
+      quietHours: { from: string; to: string } | null;
+      /** Progress mails of one commission leave at least this many days apart; null sends each stage's own at once. */
+      progressEveryDays: number | null;
     }>()
     .notNull(),
 });
 
-export const mailState = pgEnum('mail_state', ['queued', 'sent', 'delivered', 'bounced', 'failed']);
+export const mailState = pgEnum('mail_state', ['queued', 'sent', 'delivered', 'bounced', 'complained', 'failed']);
 
 /** The outbox. A row is written in the transaction of the change that causes it. */
 export const mails = pgTable(
@@ -48,11 +52,16 @@ export const mails = pgTable(
     text: text('text'),
     providerId: text('provider_id').unique(),
     tries: integer('tries').notNull().default(0),
+    /** In words, for the owner: why the last try failed, or what the other mail server said. */
     lastError: text('last_error'),
+    /** Of a bounce: 'permanent' (the address takes no mail from us any more) or 'transient'. */
+    bounce: text('bounce').$type<'permanent' | 'transient'>(),
+    /** The mail this one repeats, when the owner pressed "Send again". */
+    againOf: uuid('again_of').references((): AnyPgColumn => mails.id),
     notBefore: instant('not_before'),
     createdAt: instant('created_at').notNull(),
     sentAt: instant('sent_at'),
     settledAt: instant('settled_at'),
   },
-  (t) => [index('mails_commission').on(t.commissionId), index('mails_state').on(t.state)],
+  (t) => [index('mails_commission').on(t.commissionId), index('mails_state').on(t.state), index('mails_to').on(t.to)],
 );
