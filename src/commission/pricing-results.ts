@@ -61,6 +61,8 @@ export interface DocumentLine {
 export interface Warning {
   code: string;
   message: string;
+  /** The quote cannot be sent before this is dealt with. */
+  blocking: boolean;
 }
 
 /** A priced quote. Money in `studio` currency unless said; stages, documentLines and totals in the `quoted` one. */

@@ -79,6 +79,8 @@ export const pricingConstantsSchema = z.object({
   /** Validity when metal is more than `metalShare` of the cost. */
   metalValidityDays: z.number().int().min(1).max(365),
   metalShare: fraction,
+  /** Hours history: the studio's own factors count as `priorCount` pieces; older ratios than the last `keepLast` are dropped. */
+  calibration: z.object({ priorCount: z.number().positive(), keepLast: z.number().int().min(1) }),
   /** A held commission is priced again after this many days. */
   repriceHeldAfterDays: z.number().int().min(1),
 });
@@ -112,6 +114,19 @@ export const throughputSchema = z.object({
   repourAboveChance: fraction,
 });
 export type Throughput = z.infer<typeof throughputSchema>;
+
+/** How metal is charged on a pour day; masses in g. */
+export const pourDayRatesSchema = z.object({
+  /** Charged over poured mass, for spills and the skull, before melt loss. */
+  spillAllowance: z.number().min(1).max(2),
+  chargeStepG: z.number().int().positive(),
+  /** Share of a crucible's brim that may be filled. */
+  crucibleFill: fraction,
+  /** Most of a charge that may be returns. */
+  returnsShare: fraction,
+  crucibles: z.array(z.object({ code, brimG: z.number().int().positive(), brassOnly: z.boolean() })).min(1),
+});
+export type PourDayRates = z.infer<typeof pourDayRatesSchema>;
 
 /** A finish or edge: its minutes as a factor on the form's own line for the studio's usual one (factor 1). */
 const routeSchema = z.object({ code, name, factor: z.number().min(0).max(5), extraMaterialsMinor: amountMinorSchema });
@@ -174,6 +189,7 @@ export const studioRatesSchema = z.object({
   currencies: z.partialRecord(currencySchema, z.object({ rate: z.number().positive(), buffer: fraction })),
   carriage: z.array(carriageZoneSchema).min(1),
   throughput: throughputSchema,
+  pourDay: pourDayRatesSchema,
   finishes: z.array(routeSchema).min(1),
   edges: z.array(routeSchema).min(1),
   ownPiece: ownPieceRatesSchema,
