@@ -44,9 +44,18 @@ export async function queueMail(db: Db, mail: NewMail): Promise<string | null> {
   return row.id;
 }
 
-/** Adds a job in the caller's transaction. Jobs of one `key` are merged while they wait. */
-export async function queueJob(db: Db, task: string, payload: Record<string, string>, key: string): Promise<void> {
+/**
+ * Adds a job in the caller's transaction, to be run at once or at `runAt`. Jobs of one `key` are merged
+ * while they wait; one that is running already lets a second one through.
+ */
+export async function queueJob(
+  db: Db,
+  task: string,
+  payload: Record<string, string>,
+  key: string,
+  runAt: Date | null = null,
+): Promise<void> {
   await db.execute(
-    sql`select graphile_worker.add_job(${task}::text, payload := ${JSON.stringify(payload)}::json, job_key := ${key}::text, max_attempts := 20)`,
+    sql`select graphile_worker.add_job(${task}::text, payload := ${JSON.stringify(payload)}::json, job_key := ${key}::text, run_at := ${runAt?.toISOString() ?? null}::timestamptz, max_attempts := 20)`,
   );
 }

@@ -31,7 +31,16 @@ export const studioSettings = pgTable('studio_settings', {
     .notNull(),
 });
 
-export const mailState = pgEnum('mail_state', ['queued', 'sent', 'delivered', 'bounced', 'complained', 'failed']);
+/** `merged`: a progress mail whose news a later one told, where the studio limits how often they leave. */
+export const mailState = pgEnum('mail_state', [
+  'queued',
+  'sent',
+  'delivered',
+  'bounced',
+  'complained',
+  'failed',
+  'merged',
+]);
 
 /** The outbox. A row is written in the transaction of the change that causes it. */
 export const mails = pgTable(
