@@ -10,7 +10,7 @@ const mm = z.number().min(-2000).max(2000);
 const size = z.number().min(0).max(2000);
 const point = z.tuple([mm, mm]);
 
-/** Cross-section shapes. Each is a half-height over the width, see `drawing/section.ts` for the formulae. */
+/** Cross-section shapes. Each is a half-height over the width, see `plate/section.ts` for the formulae. */
 export const sectionShapes = [
   'lenticular',
   'rhombic',
@@ -59,8 +59,15 @@ const stations = z
     message: 'Stations must follow one another along the axis.',
   });
 
-/** How a body ends: `cap` rounds the last millimetres to a dome, `bulge` curves the end line outwards (or inwards). */
-const endSchema = z.object({ cap: size.optional(), bulge: mm.optional() });
+/**
+ * How a body ends: `cap` rounds the last millimetres to a dome, `bulge` curves the end line outwards (or inwards),
+ * `notch` cuts a V of that depth and width out of its middle.
+ */
+const endSchema = z.object({
+  cap: size.optional(),
+  bulge: mm.optional(),
+  notch: z.object({ depth: size, width: size }).optional(),
+});
 
 const hollowSchema = z.object({
   stations,
@@ -84,7 +91,7 @@ const bodySchema = z.object({
   over: z.boolean().optional(),
 });
 
-/** A hole through the piece from front to back, or (`depth`) a dimple from the front; `d` is the diameter. */
+/** A hole through the piece from front to back; `d` is the diameter. */
 const holeSchema = z.object({ at: mm, across: mm, d: z.number().gt(0).max(200), mirrored: z.boolean().optional() });
 
 /** A pointed or rounded boss standing out from the axis, turned about it by `angle` degrees (0 = towards the reader). */
@@ -140,10 +147,9 @@ export const drawingSchema = z.object({
 });
 
 export type Drawing = z.infer<typeof drawingSchema>;
-export type DrawingInput = z.input<typeof drawingSchema>;
+export type End = z.infer<typeof endSchema>;
 export type Body = Drawing['bodies'][number];
 export type Station = Body['stations'][number];
 export type SectionSpec = Drawing['sections'][string];
-export type Hole = Drawing['holes'][number];
 export type Knop = Drawing['knops'][number];
 export type DrawnLine = Drawing['lines'][number];

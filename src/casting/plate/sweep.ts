@@ -1,4 +1,4 @@
-import type { Body, Drawing } from '../drawing';
+import type { Body, Drawing, End } from '../drawing';
 import { profileAlong, reach, samplePlaces, type Profile } from './profile';
 import { sectionPolygon, type Point } from './section';
 
@@ -63,11 +63,17 @@ function follow(spine: Spine, from: number, to: number): (at: number) => Place {
 /** A body cut into slices: where each slice stands and how large it is there. */
 export type Slice = { at: number; place: Place; profile: Profile };
 
-export function slicesOf(body: Sweep, n: number): Slice[] {
+/** The body's slices at chosen places (mm along its stations). */
+export function slicesAt(body: Sweep, places: number[]): Slice[] {
   const [from, to] = body.line ?? reach(body.stations);
   const place = follow(body.spine, from, to);
   const profile = profileAlong(body.stations, body.ends, body.section);
-  return samplePlaces(body.stations, body.ends, n).map((at) => ({ at, place: place(at), profile: profile(at) }));
+  return places.map((at) => ({ at, place: place(at), profile: profile(at) }));
+}
+
+/** The body's slices at every station and about `n` places between. */
+export function slicesOf(body: Sweep, n: number): Slice[] {
+  return slicesAt(body, samplePlaces(body.stations, body.ends, n));
 }
 
 /** Millimetres of line for each millimetre of stations: 1 on a straight axis, else as the spine stretches them. */
@@ -84,23 +90,25 @@ export function hollowSweep(body: Body): Sweep | undefined {
 /** Outline in the plane the line lies in: one side out, the other back, with bulged ends. */
 function offsetOutline(body: Sweep, view: View, n: number): Point[] {
   const slices = slicesOf(body, n);
-  const plus = (p: Profile) => (view === 'plan' ? p.left : p.front);
-  const minus = (p: Profile) => (view === 'plan' ? p.right : p.back);
+  const plus = (p: Profile) => (view === 'plan' ? p.left : Math.max(0, p.front));
+  const minus = (p: Profile) => (view === 'plan' ? p.right : Math.max(0, p.back));
   const edge = (s: Slice, d: number): Point => [s.place.x + s.place.nx * d, s.place.y + s.place.ny * d];
   const there = slices.map((s) => edge(s, plus(s.profile)));
   const back = slices.map((s) => edge(s, -minus(s.profile))).reverse();
-  const end = view === 'plan' ? bulged(there[there.length - 1]!, back[0]!, body.ends?.end?.bulge) : [];
-  const start = view === 'plan' ? bulged(back[back.length - 1]!, there[0]!, body.ends?.start?.bulge) : [];
+  const end = view === 'plan' ? endLine(there[there.length - 1]!, back[0]!, body.ends?.end) : [];
+  const start = view === 'plan' ? endLine(back[back.length - 1]!, there[0]!, body.ends?.start) : [];
   return [...there, ...end, ...back, ...start];
 }
 
-/** Points of an end line bent outwards by `bulge` mm (a parabola; negative bends it inwards). */
-function bulged(a: Point, b: Point, bulge = 0): Point[] {
+/** Points between the two corners of an end: a parabola bent outwards by `bulge` mm, less a V-shaped notch. */
+function endLine(a: Point, b: Point, end: End | undefined): Point[] {
   const width = Math.hypot(b[0] - a[0], b[1] - a[1]);
-  if (bulge === 0 || width === 0) return [];
+  if (!end || width === 0) return [];
+  const { bulge = 0, notch } = end;
   const [nx, ny] = [-(b[1] - a[1]) / width, (b[0] - a[0]) / width];
-  return Array.from({ length: 23 }, (_, i) => (i + 1) / 24).map((t): Point => {
-    const k = 4 * t * (1 - t) * bulge;
+  return Array.from({ length: 47 }, (_, i) => (i + 1) / 48).map((t): Point => {
+    const cut = notch ? notch.depth * Math.max(0, 1 - (Math.abs(t - 0.5) * 2 * width) / notch.width) : 0;
+    const k = 4 * t * (1 - t) * bulge - cut;
     return [a[0] + (b[0] - a[0]) * t + nx * k, a[1] + (b[1] - a[1]) * t + ny * k];
   });
 }

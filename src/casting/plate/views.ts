@@ -3,7 +3,7 @@ import { hull } from './path';
 import { profileAlong, samplePlaces } from './profile';
 import { sectionPolygon, type Point } from './section';
 import { stipple, type Light } from './stipple';
-import { hollowSweep, outlineOf, smoothThrough, type View } from './sweep';
+import { hollowSweep, outlineOf, slicesAt, smoothThrough, type View } from './sweep';
 
 /** Kinds of mark on a plate. `outline` and `fill` come in pairs; `paper` shows the ground through a hole. */
 export type Stroke = 'outline' | 'fill' | 'stipple' | 'edge' | 'fine' | 'hidden' | 'paper' | 'section' | 'tick';
@@ -54,7 +54,6 @@ function drawnPoints(points: Point[], smooth: boolean | undefined, closed: boole
 /** A line at a share of the first body's half-width (plan) or half-thickness (side), the share easing between points. */
 function followed(line: Extract<DrawnLine, { follow: unknown }>, drawing: Drawing): Point[] {
   const main = drawing.bodies[0]!;
-  const along = profileAlong(main.stations, main.ends, main.section);
   const share = profileAlong(
     line.follow.map(([at, k]) => ({ at, left: k, right: k, thickness: 1 })),
     undefined,
@@ -62,16 +61,13 @@ function followed(line: Extract<DrawnLine, { follow: unknown }>, drawing: Drawin
   );
   const from = line.follow[0]![0];
   const to = line.follow[line.follow.length - 1]![0];
-  return samplePlaces(main.stations, main.ends, 160)
-    .filter((at) => at > from && at < to)
-    .concat(to)
-    .reduce<number[]>((list, at) => [...list, at], [from])
-    .map((at): Point => {
-      const k = share(at).left;
-      const p = along(at);
-      if (line.view === 'plan') return [at, k < 0 ? k * p.right : k * p.left];
-      return [at, k < 0 ? k * p.back : k * p.front];
-    });
+  const between = samplePlaces(main.stations, main.ends, 160).filter((at) => at > from && at < to);
+  return slicesAt(main, [from, ...between, to]).map(({ at, place, profile }): Point => {
+    const k = share(at).left;
+    const half = line.view === 'plan' ? [profile.left, profile.right] : [profile.front, profile.back];
+    const d = k * (k < 0 ? half[1]! : half[0]!);
+    return [place.x + place.nx * d, place.y + place.ny * d];
+  });
 }
 
 /** A boss seen in a view: its silhouette and, when it faces the reader, the ridges from its tip. */

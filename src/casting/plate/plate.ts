@@ -2,6 +2,7 @@ import type { Drawing } from '../drawing';
 import { dotsData, pathData } from './path';
 import type { Point } from './section';
 import type { Light } from './stipple';
+import { slicesAt } from './sweep';
 import { cutShapes, planShapes, sideShapes, type Shape, type Stroke } from './views';
 
 /** A mark on the sheet, in drawing order. The stylesheet gives each role its weight. */
@@ -53,7 +54,10 @@ function sectionRow(drawing: Drawing, gap: number): Shape[] {
   const lying = drawing.stance === 'lying';
   const k = drawing.sectionScale;
   const turn: Place = lying ? ([v, z]) => [z * k, -v * k] : ([v, z]) => [v * k, -z * k];
-  const level = (at: number) => stances[drawing.stance]([at, 0])[lying ? 0 : 1];
+  const level = (at: number) => {
+    const { place } = slicesAt(drawing.bodies[0]!, [at])[0]!;
+    return stances[drawing.stance]([place.x, place.y])[lying ? 0 : 1];
+  };
   let free = -Infinity;
   return [...drawing.cuts]
     .sort((a, b) => level(a.at) - level(b.at))
@@ -67,29 +71,19 @@ function sectionRow(drawing: Drawing, gap: number): Shape[] {
     });
 }
 
-/** Short ticks on both sides of the plan where a section is taken. */
-function ticks(drawing: Drawing, plan: Shape[], reachMm: number): Shape[] {
-  const outline = plan.filter((s) => s.role === 'outline').flatMap((s) => s.points);
-  return drawing.cuts.flatMap(({ at }) => {
-    const near = outline.filter((p) => Math.abs(p[0] - at) < reachMm).map((p) => p[1]);
-    const [lo, hi] = [Math.min(0, ...near), Math.max(0, ...near)];
-    return [
-      {
-        role: 'tick' as const,
-        points: [
-          [at, hi + reachMm * 0.4],
-          [at, hi + reachMm * 1.4],
-        ] as Point[],
-      },
-      {
-        role: 'tick' as const,
-        points: [
-          [at, lo - reachMm * 0.4],
-          [at, lo - reachMm * 1.4],
-        ] as Point[],
-      },
-    ];
-  });
+/** Short ticks across the piece, on both sides of the plan, where a section is taken. */
+function ticks(drawing: Drawing, lengthMm: number): Shape[] {
+  const main = drawing.bodies[0]!;
+  return slicesAt(
+    main,
+    drawing.cuts.map((cut) => cut.at),
+  ).flatMap(({ place, profile }) =>
+    [profile.left, -profile.right].map((edge): Shape => {
+      const out = Math.sign(edge) || 1;
+      const spot = (d: number): Point => [place.x + place.nx * d, place.y + place.ny * d];
+      return { role: 'tick', points: [spot(edge + out * lengthMm * 0.4), spot(edge + out * lengthMm * 1.4)] };
+    }),
+  );
 }
 
 function markOf(shape: Shape): PlateMark {
@@ -105,7 +99,7 @@ function arranged(drawing: Drawing, options: PlateOptions, gap: number): Shape[]
   const face = planShapes(drawing, lights[drawing.stance], options.dots ?? 2600);
   if (options.views === 'plan') return placed(face, place);
   const rows = [
-    placed([...face, ...ticks(drawing, face, gap * 0.22)], place),
+    placed([...face, ...ticks(drawing, gap * 0.22)], place),
     sectionRow(drawing, gap * 0.35),
     placed(sideShapes(drawing), place),
   ];
