@@ -67,6 +67,8 @@ export const LETTER_DATA = {
     minutes: z.int().min(1).max(60),
     /** Given when signing in also confirms the address of an enquiry. */
     enquiry: z.strictObject({ ref: about.ref, title: line }).optional(),
+    /** Given when the owner asked somebody in: "Wren Addlecombe has invited you to Marrowfen as a maker." */
+    invitedAs: line.optional(),
   }),
   /** Enquiry received. `received` is what was asked for, in facts; `files` are display names. */
   M1: z.strictObject({
