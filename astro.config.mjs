@@ -4,10 +4,22 @@ import tailwindcss from '@tailwindcss/vite';
 import { defineConfig } from 'astro/config';
 
 const port = Number(process.env.PORT || 4321);
-const publicUrl = new URL(process.env.PUBLIC_URL || `http://localhost:${port}`);
+const publicUrl = process.env.PUBLIC_URL ? new URL(process.env.PUBLIC_URL) : undefined;
+
+/** The front server sends stored files in production; under `astro dev` the same code does it from here. */
+const storedFiles = {
+  name: 'stored-files',
+  configureServer(server) {
+    server.middlewares.use(async (req, res, next) => {
+      const { deliverInDevelopment } = await server.ssrLoadModule('/src/launch/front/development.ts');
+      deliverInDevelopment(req, res);
+      next();
+    });
+  },
+};
 
 export default defineConfig({
-  site: publicUrl.origin,
+  ...(publicUrl && { site: publicUrl.origin }),
   output: 'static',
   adapter: node({ mode: 'middleware' }),
   integrations: [react()],
@@ -19,7 +31,7 @@ export default defineConfig({
     allowedDomains: [
       { hostname: 'localhost', protocol: 'http' },
       { hostname: '127.0.0.1', protocol: 'http' },
-      { hostname: publicUrl.hostname, protocol: publicUrl.protocol.replace(':', '') },
+      ...(publicUrl ? [{ hostname: publicUrl.hostname, protocol: publicUrl.protocol.replace(':', '') }] : []),
     ],
   },
   // The front server adds what a page's own <meta> cannot carry: frame-ancestors, form-action.
@@ -40,7 +52,7 @@ export default defineConfig({
     },
   },
   vite: {
-    plugins: [tailwindcss()],
+    plugins: [tailwindcss(), storedFiles],
     // Astro 5 carries zod 3; bundling keeps the server on the zod 4 that the source imports.
     ssr: { noExternal: ['zod'] },
     worker: { format: 'es' },

@@ -21,7 +21,7 @@ export function fileResponse(file: StoredFile): Response {
     [FILE_HEADER]: encodeURIComponent(file.path),
     'content-type': file.type,
     'content-disposition': disposition(file),
-    'cache-control': file.cacheControl ?? 'private, no-cache',
+    'cache-control': `${file.cacheControl ?? 'private, no-cache'}, no-transform`,
     // What somebody uploaded must never act as a page of ours.
     'content-security-policy': "default-src 'none'; style-src 'unsafe-inline'; sandbox",
   });
