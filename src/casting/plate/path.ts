@@ -24,7 +24,7 @@ function distanceToChord(p: Point, a: Point, b: Point): number {
 const number = (value: number) => String(Math.round(value * 100) / 100);
 
 /** SVG path data for a chain of points in mm, closed with Z when asked. Thinned to `tolerance` mm. */
-export function pathData(points: Point[], closed: boolean, tolerance = 0.03): string {
+export function pathData(points: Point[], closed: boolean, tolerance = 0.04): string {
   const kept = thinned(points, tolerance);
   const body = kept.map(([x, y], i) => `${i === 0 ? 'M' : 'L'}${number(x)} ${number(y)}`).join('');
   return closed ? `${body}Z` : body;

@@ -112,13 +112,20 @@ function arranged(drawing: Drawing, options: PlateOptions, gap: number): Shape[]
   });
 }
 
+/** Space between views, mm: by the length of the piece, less for a long thin one. */
+function gapBetween(plan: Box): number {
+  const [wide, high] = [plan.x1 - plan.x0, plan.y1 - plan.y0];
+  const long = Math.max(wide, high);
+  return Math.min(long * 0.075, Math.max(Math.min(wide, high) * 0.35, long * 0.032));
+}
+
 /**
  * The plate of a piece in the manner of a finds drawing: plan, sections beside their cuts, side view, scale bar. All in
  * mm at 1:1, so a bar of 50 is 50 units of the view box. Pure: one description always gives the same path data.
  */
 export function plateOf(drawing: Drawing, options: PlateOptions): Plate {
   const longest = boxOf(planShapes(drawing, lights[drawing.stance], 0));
-  const gap = Math.max(longest.x1 - longest.x0, longest.y1 - longest.y0) * 0.075;
+  const gap = gapBetween(longest);
   const shapes = arranged(drawing, options, gap);
   const box = boxOf(shapes);
   const margin = gap * 0.4;

@@ -2,7 +2,7 @@ import type { Body, Drawing, DrawnLine, Knop } from '../drawing';
 import { hull } from './path';
 import { profileAlong, samplePlaces } from './profile';
 import { sectionPolygon, type Point } from './section';
-import { stipple, type Light } from './stipple';
+import { stipple, stippledArea, type Light } from './stipple';
 import { hollowSweep, outlineOf, slicesAt, smoothThrough, type View } from './sweep';
 
 /** Kinds of mark on a plate. `outline` and `fill` come in pairs; `paper` shows the ground through a hole. */
@@ -97,9 +97,12 @@ function knopsOf(drawing: Drawing, view: View, front: boolean): Shape[] {
 /** Plan: the face of the piece, stippled, with its lines, holes and dashed hollows. Coordinates [along, across]. */
 export function planShapes(drawing: Drawing, light: Light, dots: number): Shape[] {
   const joined = drawing.bodies.filter((b) => !b.over);
+  const whole = drawing.bodies.reduce((sum, body) => sum + stippledArea(body) * (body.mirrored ? 2 : 1), 0);
   const dotted = (body: Body): Shape => {
-    const points = stipple(body, drawing.sections, light, dots);
-    const other = body.mirrored ? mirror(stipple(body, drawing.sections, [light[0], -light[1], light[2]], dots)) : [];
+    const tries = Math.round((dots * stippledArea(body)) / whole);
+    const points = stipple(body, drawing.sections, light, tries);
+    const turned: Light = [light[0], -light[1], light[2]];
+    const other = body.mirrored ? mirror(stipple(body, drawing.sections, turned, tries)) : [];
     return { role: 'stipple', points: [...points, ...other], dots: true };
   };
   return [
@@ -122,12 +125,11 @@ export function planShapes(drawing: Drawing, light: Light, dots: number): Shape[
   ];
 }
 
-/** Side view: silhouette from the edge, hollows dashed. Coordinates [along, height]. */
+/** Side view: silhouettes from the edge, parts on that side over the main body, hollows dashed. [along, height]. */
 export function sideShapes(drawing: Drawing): Shape[] {
   return [
     ...knopsOf(drawing, 'side', false),
-    ...pair(drawing.bodies.filter((b) => !b.over).flatMap((body) => outlines(body, drawing, 'side'))),
-    ...drawing.bodies.filter((b) => b.over).flatMap((body) => pair(outlines(body, drawing, 'side'))),
+    ...drawing.bodies.flatMap((body) => pair(outlines(body, drawing, 'side'))),
     ...drawing.bodies.flatMap((body) => hollows(body, drawing, 'side')),
     ...knopsOf(drawing, 'side', true),
     ...drawing.lines.filter((l) => l.view === 'side').flatMap((l) => lineShapes(l, drawing)),
@@ -147,7 +149,7 @@ export function cutShapes(drawing: Drawing, at: number): Shape[] {
         radius * Math.sin(turn) + side * Math.cos(turn),
         radius * Math.cos(turn) - side * Math.sin(turn),
       ];
-      const foot = k.foot * 0.9;
+      const foot = k.foot * 0.8;
       const tip = k.foot + (k.tip - k.foot) * size;
       return {
         role: 'section',
