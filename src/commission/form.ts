@@ -31,6 +31,8 @@ export const workSchema = z.object({
   /** Finish and edge the lines above were reckoned for (codes of the studio's rates). */
   finish: z.string().min(1),
   edge: z.string().min(1),
+  /** The haft the lines include when none is asked for; null when the form comes without. */
+  haft: z.string().nullable(),
   /** Added when the piece is wanted at another size than the studio's pattern. */
   newPattern: z.object({ minutes: z.number().int().min(0), materialsMinor: amountMinorSchema }),
   /** Mass one haft adds to the parcel, g. */
@@ -46,8 +48,11 @@ export const formSchema = z.object({
   name: text,
   period: text,
   region: text.optional(),
-  /** Plain words about the form, in the studio's own voice. */
-  summary: z.string().min(1).max(2000),
+  /** The kind of find it is made after, without naming an owner. */
+  after: text,
+  /** Plain words about the form, in the studio's own voice: two sentences, then paragraphs. */
+  summary: text,
+  description: z.array(z.string().min(1).max(1200)).min(1).max(6),
   dimensionsMm: z.object({ length: millimetres, width: millimetres, thickness: millimetres.optional() }),
   massesG: z.object({ finished: grams, cast: grams, poured: grams }),
   /** Codes of the alloys offered, and the one the form is shown in. */
@@ -65,5 +70,12 @@ export const formSchema = z.object({
 export type Form = z.infer<typeof formSchema>;
 
 /** The part of a form that pricing needs: no drawing, no words. The rate card carries these. */
-export const pricedFormSchema = formSchema.omit({ drawing: true, summary: true, cautions: true, region: true });
+export const pricedFormSchema = formSchema.omit({
+  drawing: true,
+  summary: true,
+  description: true,
+  after: true,
+  cautions: true,
+  region: true,
+});
 export type PricedForm = z.infer<typeof pricedFormSchema>;
