@@ -9,6 +9,7 @@ import { checkoutSessions, quotes, stagePayments, stripeEvents } from './db/sche
 import { moveDeal, recordEvent } from './history';
 import { bookEntry, readBalance, type LedgerEntry } from './ledger';
 import { queueReceiptMail } from './payment-mails';
+import { openPieces } from './pieces';
 import type { Services } from './services';
 
 /** What became of an event; kept beside its id. */
@@ -261,6 +262,7 @@ export async function welcomePayment(
       public: true,
       at,
     });
+    await openPieces(tx, commission.id, at);
   }
   await queueReceiptMail(services, tx, commission, entry);
 }

@@ -1,0 +1,13 @@
+import type { APIRoute } from 'astro';
+import { answer } from '../../../../server/door';
+import { finishCommission } from '../../../../server/finishing';
+
+export const prerender = false;
+
+/** Every piece has passed inspection: tell the customer and call in the balance. */
+export const POST: APIRoute = async (context) => {
+  const { services, user } = context.locals;
+  const ref = context.params['ref'];
+  const outcome = await finishCommission(services, user, ref);
+  return answer(context, outcome, { to: `/bench/${ref}`, back: `/bench/${ref}` });
+};

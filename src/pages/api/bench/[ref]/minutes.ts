@@ -1,0 +1,15 @@
+import type { APIRoute } from 'astro';
+import { minutesSchema } from '../../../../commission/work-done';
+import { answer, readInput } from '../../../../server/door';
+import { logMinutes } from '../../../../server/minutes';
+
+export const prerender = false;
+
+/** Minutes worked. */
+export const POST: APIRoute = async (context) => {
+  const { services, user } = context.locals;
+  const ref = context.params['ref'];
+  const input = await readInput(context, minutesSchema);
+  const outcome = input.ok ? await logMinutes(services, user, ref, input.value) : input;
+  return answer(context, outcome, { to: `/bench/${ref}`, back: `/bench/${ref}` });
+};

@@ -1,0 +1,12 @@
+import type { APIRoute } from 'astro';
+import { answer } from '../../../../server/door';
+import { addPhoto } from '../../../../server/photos';
+
+export const prerender = false;
+
+/** A photo from the bench (multipart: file, clientId, stage, caption, alt, piece, takenAt). */
+export const POST: APIRoute = async (context) => {
+  const page = `/bench/${context.params['ref']}`;
+  const outcome = await addPhoto(context.locals.services, context.locals.user, context.params['ref'], context.request);
+  return answer(context, outcome, { to: page, back: page });
+};

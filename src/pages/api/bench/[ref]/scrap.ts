@@ -1,0 +1,15 @@
+import type { APIRoute } from 'astro';
+import { scrapSchema } from '../../../../commission/work-done';
+import { answer, readInput } from '../../../../server/door';
+import { scrapCasting } from '../../../../server/scrap';
+
+export const prerender = false;
+
+/** A casting is given up, with its cause. */
+export const POST: APIRoute = async (context) => {
+  const { services, user } = context.locals;
+  const ref = context.params['ref'];
+  const input = await readInput(context, scrapSchema);
+  const outcome = input.ok ? await scrapCasting(services, user, ref, input.value) : input;
+  return answer(context, outcome, { to: `/bench/${ref}`, back: `/bench/${ref}` });
+};

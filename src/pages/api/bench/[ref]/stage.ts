@@ -1,0 +1,15 @@
+import type { APIRoute } from 'astro';
+import { stageDoneSchema } from '../../../../commission/work-done';
+import { answer, readInput } from '../../../../server/door';
+import { reachStage } from '../../../../server/making';
+
+export const prerender = false;
+
+/** One piece reaches its next stage. */
+export const POST: APIRoute = async (context) => {
+  const { services, user } = context.locals;
+  const ref = context.params['ref'];
+  const input = await readInput(context, stageDoneSchema);
+  const outcome = input.ok ? await reachStage(services, user, ref, input.value) : input;
+  return answer(context, outcome, { to: `/bench/${ref}`, back: `/bench/${ref}` });
+};

@@ -1,0 +1,15 @@
+import type { APIRoute } from 'astro';
+import { timerSchema } from '../../../../commission/work-done';
+import { answer, readInput } from '../../../../server/door';
+import { turnTimer } from '../../../../server/minutes';
+
+export const prerender = false;
+
+/** Starts or stops the timer. */
+export const POST: APIRoute = async (context) => {
+  const { services, user } = context.locals;
+  const ref = context.params['ref'];
+  const input = await readInput(context, timerSchema);
+  const outcome = input.ok ? await turnTimer(services, user, ref, input.value) : input;
+  return answer(context, outcome, { to: `/bench/${ref}`, back: `/bench/${ref}` });
+};
