@@ -8,29 +8,37 @@ function totalMinor(lines: readonly CostLine[], pieces: number): number {
   return lines.reduce((sum, line) => sum + unitCostMinor(line) * lineUnits(line, pieces), 0);
 }
 
-/**
- * Hand work on all pieces, minor units. Lines that take the repeat factor are added up per hourly rate and number of
- * pieces; pieces two and later take the sum of their minutes times the factor, to the whole minute. Materials repeat whole.
- */
-export function handMinor(lines: readonly CostLine[], pieces: number, repeatFactor: number): number {
-  const repeating = lines.filter((line) => line.takesRepeatFactor && lineUnits(line, pieces) > 1);
-  const plain = lines.filter((line) => !repeating.includes(line));
+/** Hand lines that share an hourly rate and a number of pieces, so that their repeats are rounded together. */
+function repeatGroups(lines: readonly CostLine[], pieces: number): CostLine[][] {
   const groups = new Map<string, CostLine[]>();
-  for (const line of repeating) {
+  for (const line of lines) {
     const key = `${line.rateMinorPerHour} x ${lineUnits(line, pieces)}`;
     groups.set(key, [...(groups.get(key) ?? []), line]);
   }
-  let total = totalMinor(plain, pieces);
-  for (const group of groups.values()) {
-    const [line] = group;
-    if (!line) continue;
-    const minutes = halfUp(group.reduce((sum, item) => sum + item.minutes, 0) * repeatFactor);
-    const materials = group.reduce((sum, item) => sum + item.materialsMinor, 0);
+  return [...groups.values()];
+}
+
+/**
+ * Hand work on all pieces: minor units and minutes. Lines that take the repeat factor are added up per hourly rate and
+ * number of pieces; pieces two and later take the sum of their minutes times the factor, to the whole minute. Materials
+ * repeat whole.
+ */
+export function sumHand(lines: readonly CostLine[], pieces: number, repeatFactor: number) {
+  const repeats = (line: CostLine) => line.takesRepeatFactor && lineUnits(line, pieces) > 1;
+  const plain = lines.filter((line) => !repeats(line));
+  let costMinor = totalMinor(plain, pieces);
+  let minutes = plain.reduce((sum, line) => sum + line.minutes * lineUnits(line, pieces), 0);
+  for (const group of repeatGroups(lines.filter(repeats), pieces)) {
+    const [{ rateMinorPerHour, ...line }] = group as [CostLine];
     const later = lineUnits(line, pieces) - 1;
-    total += group.reduce((sum, item) => sum + unitCostMinor(item), 0);
-    total += later * (timeCostMinor(minutes, line.rateMinorPerHour) + materials);
+    const first = group.reduce((sum, item) => sum + item.minutes, 0);
+    const again = halfUp(first * repeatFactor);
+    const materials = group.reduce((sum, item) => sum + item.materialsMinor, 0);
+    costMinor += group.reduce((sum, item) => sum + unitCostMinor(item), 0);
+    costMinor += later * (timeCostMinor(again, rateMinorPerHour) + materials);
+    minutes += first + later * again;
   }
-  return total;
+  return { costMinor, minutes };
 }
 
 /** What dedicated heats add: their whole cost less the shares already counted, once and at each re-pour. */
@@ -59,7 +67,7 @@ export function sumLines(draft: QuoteDraft): CostSums {
     afterGate: totalMinor(of('after-gate'), pieces),
     attempt: perUnit('attempt'),
     metal: perUnit('metal'),
-    hand: handMinor(of('hand'), pieces, pricing.repeatFactor),
+    hand: sumHand(of('hand'), pieces, pricing.repeatFactor).costMinor,
     sundries: totalMinor(of('sundries'), pieces),
     downgrade: scrapDowngradeMinor(draft.massesG, draft.metal),
     lostHand: draft.lateShare * pricing.lostFettlingShare * fettling,

@@ -131,6 +131,8 @@ export interface Estimate {
   assumptions: string[];
   risks: string[];
   levers: Lever[];
+  /** What each alloy offered would change, the chosen one left out. */
+  alloys: { code: string; name: string; differenceMinor: number }[];
   stages: StagePayment[];
   /** The first payment, tax included when `pricesShown` is inclusive. */
   firstPaymentMinor: number;
