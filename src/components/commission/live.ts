@@ -1,0 +1,47 @@
+/**
+ * Keeps a page's live parts fresh. The element `[data-live-source]` names the event stream; on news the
+ * page reads itself again and swaps every `[data-live]` part for its new self. Parts somebody is
+ * typing in are left alone until the next news. Without scripts the page is simply the page.
+ */
+const source = document.querySelector<HTMLElement>('[data-live-source]')?.dataset['liveSource'];
+let reading = false;
+let again = false;
+
+function isBusy(part: Element): boolean {
+  const focused = document.activeElement;
+  return part.contains(focused) && focused !== null && /^(INPUT|TEXTAREA|SELECT)$/.test(focused.tagName);
+}
+
+async function refresh(): Promise<void> {
+  if (reading) {
+    again = true;
+    return;
+  }
+  reading = true;
+  try {
+    const response = await fetch(location.href, { headers: { accept: 'text/html' }, credentials: 'same-origin' });
+    if (!response.ok) return;
+    const fresh = new DOMParser().parseFromString(await response.text(), 'text/html');
+    for (const part of document.querySelectorAll('[data-live]')) {
+      const next = fresh.querySelector(`[data-live="${part.getAttribute('data-live')}"]`);
+      if (next && !isBusy(part) && next.innerHTML !== part.innerHTML) part.replaceChildren(...next.childNodes);
+    }
+  } finally {
+    reading = false;
+    if (again) {
+      again = false;
+      void refresh();
+    }
+  }
+}
+
+if (source) {
+  const stream = new EventSource(source);
+  let seen = false;
+  stream.addEventListener('news', () => void refresh());
+  // A stream that comes back after a break may have missed something.
+  stream.addEventListener('ready', () => {
+    if (seen) void refresh();
+    seen = true;
+  });
+}
