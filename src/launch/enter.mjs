@@ -12,14 +12,15 @@ export const root = dirname(dirname(dirname(fileURLToPath(import.meta.url))));
  *
  * @param {string} file such as `start.ts`
  * @param {string[]} args the command line after the program's name
+ * @param {{ settings?: boolean }} [options] `settings: false` leaves the file `.env` unread
  */
-export async function enter(file, args) {
+export async function enter(file, args, { settings = true } = {}) {
   try {
     const problem = nodeProblem(process.versions.node);
     if (problem) throw Object.assign(new Error(problem), { name: 'LaunchProblem' });
     process.chdir(root);
     installPackages(root);
-    if (existsSync(join(root, '.env'))) process.loadEnvFile(join(root, '.env'));
+    if (settings && existsSync(join(root, '.env'))) process.loadEnvFile(join(root, '.env'));
     const { register } = await import('tsx/esm/api');
     register();
     const { run } = await import(`./${file}`);

@@ -25,7 +25,7 @@ export interface ServerChild {
 export async function startServer(config: Config, say: (line: string) => void): Promise<ServerChild> {
   // The demo keeps its log in a file, so that the terminal shows what a person needs to read.
   const log = config.demo ? 'server.log' : undefined;
-  const spawnServer = () => spawnScript('src/launch/serve.ts', config, log);
+  const spawnServer = () => spawnScript('src/launch/serve.ts', config, { log });
   let child = spawnServer();
   let stopping = false;
   await waitUntilHealthy(child, config, log);

@@ -37,7 +37,7 @@ export async function openStudio(): Promise<Studio> {
     if (studio.config.demo) await openDatabase(studio, closers);
     await steps.run('Bringing the tables up to date', () => migrateDatabase(studio.config.databaseUrl, 'drizzle'));
     if (studio.config.demo) {
-      if (existsSync('fakes/server.ts')) await openFakes(studio, closers);
+      await openFakes(studio, closers);
       await steps.run('Looking for the demo', (progress) => seedWhenEmpty(studio.config, progress));
     }
     return studio;
@@ -72,6 +72,6 @@ async function openDatabase(studio: Studio, closers: (() => void | Promise<void>
 
 async function openFakes(studio: Studio, closers: (() => void | Promise<void>)[]): Promise<void> {
   const fakes = await studio.steps.run('Starting the pay page and the inbox', () => startFakes(studio.config));
-  closers.push(fakes.stop);
-  studio.children.push({ name: 'pay page and inbox', process: fakes.process });
+  closers.push(async () => void (await Promise.all(fakes.map((fake) => fake.stop()))));
+  studio.children.push(...fakes);
 }

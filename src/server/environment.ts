@@ -2,11 +2,17 @@ import { z } from 'zod';
 
 const blankIsAbsent = (value: unknown) => (typeof value === 'string' && value.trim() === '' ? undefined : value);
 const optional = <T extends z.ZodType>(rule: T) => z.preprocess(blankIsAbsent, rule.optional());
+const portRule = 'must be a whole number from 1024 to 65532; it and the next three ports are used';
+const basePort = z.coerce
+  .number({ error: portRule })
+  .refine((port) => Number.isInteger(port) && port >= 1024 && port <= 65_532, {
+    error: portRule,
+  });
 const webAddress = z.url({ protocol: /^https?$/, error: 'must be a web address such as https://studio.example' });
 
 /** The environment as the program reads it. Every setting may be absent or blank. */
 export const configSchema = z.object({
-  PORT: optional(z.coerce.number({ error: 'must be a number' }).int().min(1024).max(65_532)),
+  PORT: optional(basePort),
   HOST: optional(z.string()),
   PUBLIC_URL: optional(webAddress),
   DATABASE_URL: optional(z.url({ protocol: /^postgres(ql)?$/, error: 'must begin with postgres://' })),

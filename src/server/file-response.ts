@@ -1,8 +1,12 @@
 /** The header by which an endpoint tells the web server in front of it which file to send. Never leaves the machine. */
 export const FILE_HEADER = 'x-pourwright-file';
 
+// What somebody uploaded must never act as a page of ours. A browser's PDF reader does not run inside a sandbox.
+const STORED_POLICY = "default-src 'none'; style-src 'unsafe-inline'; sandbox";
+const PDF_POLICY = "default-src 'none'; object-src 'self'; style-src 'unsafe-inline'";
+
 export interface StoredFile {
-  /** Path inside the data folder, as storage made it; never anything a request said. */
+  /** Path inside the data folder, beginning with `uploads/`, as storage made it; never anything a request said. */
   path: string;
   /** Media type to declare, from what was found in the file when it arrived. */
   type: string;
@@ -22,8 +26,7 @@ export function fileResponse(file: StoredFile): Response {
     'content-type': file.type,
     'content-disposition': disposition(file),
     'cache-control': `${file.cacheControl ?? 'private, no-cache'}, no-transform`,
-    // What somebody uploaded must never act as a page of ours.
-    'content-security-policy': "default-src 'none'; style-src 'unsafe-inline'; sandbox",
+    'content-security-policy': file.type === 'application/pdf' ? PDF_POLICY : STORED_POLICY,
   });
   return new Response(null, { headers });
 }

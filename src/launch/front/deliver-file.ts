@@ -1,6 +1,9 @@
 import type { IncomingMessage, OutgoingHttpHeaders, ServerResponse } from 'node:http';
 import send from 'send';
 
+/** Percent-encoded `uploads/…` without dot segments. */
+const INSIDE_UPLOADS = /^uploads%2F(?!.*(^|%2F)\.)[\w%.-]+$/;
+
 /**
  * Streams a stored file as the answer, with ranges, conditional requests and at the reader's pace.
  * The headers already set on `res` stay.
@@ -14,6 +17,7 @@ export function deliverFile(
   path: string,
   onError: (error: Error) => void,
 ): void {
+  if (!INSIDE_UPLOADS.test(path)) throw new Error(`a file outside the uploads was named: ${path}`);
   const stream = send(req, path, { root: folder, index: false, cacheControl: false, dotfiles: 'deny' });
   stream.on('error', (error: Error & { status?: number }) => {
     onError(error);

@@ -52,6 +52,7 @@ export function createFrontServer(config: Config, log: Logger, staticFolder: str
       (_status, headers) => {
         const type = String(headers['content-type'] ?? '');
         if (type.startsWith('text/event-stream')) keepUntilClosed(streams, res);
+        if (type === 'text/html') headers['content-type'] = 'text/html; charset=utf-8';
         return { ...headers, ...withPolicy(type, headers['content-security-policy'] as string | undefined) };
       },
       FILE_HEADER,
