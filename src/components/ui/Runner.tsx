@@ -16,12 +16,14 @@ export interface RunnerProps {
   label?: string;
   /** `row` keeps a few stages across even in a narrow place; names only. */
   layout?: 'auto' | 'row';
+  /** The stages explain how a piece comes about; none is this reader's piece, so no state is spoken. */
+  explains?: boolean;
 }
 
 const SAID = { done: 'done', hot: 'now', ahead: 'to come', skipped: 'left out' } as const;
 
 /** The stages of a piece as gates on a runner, filled with metal up to where the piece is. */
-export function Runner({ stages, label = 'Stages of the piece', layout = 'auto' }: RunnerProps) {
+export function Runner({ stages, label = 'Stages of the piece', layout = 'auto', explains = false }: RunnerProps) {
   const id = useId();
   const last = stages.reduce(
     (found, stage, index) => (stage.state === 'done' || stage.state === 'hot' ? index : found),
@@ -34,14 +36,14 @@ export function Runner({ stages, label = 'Stages of the piece', layout = 'auto' 
           <li
             key={stage.name}
             className={`is-${stage.state}`}
-            aria-current={stage.state === 'hot' ? 'step' : undefined}
+            aria-current={stage.state === 'hot' && !explains ? 'step' : undefined}
           >
             <Segment stage={stage} id={`${id}${index}`} index={index} last={last} turn="across" />
             {layout === 'auto' && <Segment stage={stage} id={`${id}${index}d`} index={index} last={last} turn="down" />}
             <div className="runner-words">
               <p className="runner-name">
                 {stage.name}
-                <span className="sr-only">, {SAID[stage.state]}</span>
+                {!explains && <span className="sr-only">, {SAID[stage.state]}</span>}
               </p>
               {stage.note && layout === 'auto' && <p className="runner-note">{stage.note}</p>}
             </div>
