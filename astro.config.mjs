@@ -2,6 +2,8 @@ import node from '@astrojs/node';
 import react from '@astrojs/react';
 import tailwindcss from '@tailwindcss/vite';
 import { defineConfig } from 'astro/config';
+import auth from 'auth-astro';
+import { fileURLToPath } from 'node:url';
 
 const port = Number(process.env.PORT || 4321);
 const publicUrl = process.env.PUBLIC_URL ? new URL(process.env.PUBLIC_URL) : undefined;
@@ -22,7 +24,14 @@ export default defineConfig({
   ...(publicUrl && { site: publicUrl.origin }),
   output: 'static',
   adapter: node({ mode: 'middleware' }),
-  integrations: [react()],
+  // Our own endpoint uses auth-astro's handlers; the one it would add lets a GET spend a mailed link.
+  integrations: [
+    react(),
+    auth({
+      injectEndpoints: false,
+      configFile: fileURLToPath(new URL('src/server/auth/astro-auth.ts', import.meta.url)),
+    }),
+  ],
   devToolbar: { enabled: false },
   server: { port, host: '127.0.0.1' },
   // Without this list Astro takes every request for `http://localhost` and refuses each form POST. No port means any port.

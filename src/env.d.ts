@@ -6,5 +6,7 @@ declare namespace App {
     user: import('./commission/permissions').Actor;
     /** Random id of this browser, in a cookie; ties a guest's uploads and refused forms to it. */
     browserId: string;
+    /** Why a page was refused, for the page that says so. */
+    turnedAway?: import('./commission/problem').Problem;
   }
 }
