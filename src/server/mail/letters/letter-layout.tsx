@@ -40,7 +40,7 @@ export function LetterLayout({ content, frame }: { content: LetterContent; frame
             </Column>
           </Row>
           <Heading style={LOOK.title}>{heading}</Heading>
-          <Text style={LOOK.piece}>{about?.title ?? ''}</Text>
+          {about && <Text style={LOOK.piece}>{about.title}</Text>}
           {name && <Text style={LOOK.text}>Dear {name},</Text>}
           {lead}
           <Turn content={content} publicUrl={frame.publicUrl} />
@@ -50,7 +50,7 @@ export function LetterLayout({ content, frame }: { content: LetterContent; frame
               {details}
             </>
           )}
-          <SignOff frame={frame} about={about} />
+          <SignOff frame={frame} content={content} />
         </Container>
       </Body>
     </Html>
@@ -68,7 +68,7 @@ function Turn({ content: { next, link }, publicUrl }: { content: LetterContent; 
       </Section>
       <Section>
         <Text style={{ ...LOOK.text, margin: '22px 0 0' }}>
-          <Button href={new URL(link.to, publicUrl).href} style={LOOK.button}>
+          <Button href={new URL(link.to, publicUrl).href} style={next.turn === 'yours' ? LOOK.buttonMain : LOOK.button}>
             {link.label}
           </Button>
         </Text>
@@ -79,7 +79,20 @@ function Turn({ content: { next, link }, publicUrl }: { content: LetterContent; 
 
 const TURN_WORDS = { yours: 'Your turn.', ours: 'Our turn.', nobody: 'Nothing to do.' };
 
-function SignOff({ frame: { studio, publicUrl }, about }: { frame: Frame; about: LetterContent['about'] }) {
+function SignOff({ frame: { studio, publicUrl }, content }: { frame: Frame; content: LetterContent }) {
+  const privacy = (
+    <Link href={`${publicUrl}/privacy`} style={LOOK.link}>
+      What we keep about you
+    </Link>
+  );
+  if (content.toStudio) {
+    return (
+      <>
+        <Hr style={LOOK.hairline} />
+        <Text style={LOOK.small}>Sent to the owners by the pages of {studio.name}.</Text>
+      </>
+    );
+  }
   return (
     <>
       <Hr style={LOOK.hairline} />
@@ -88,10 +101,8 @@ function SignOff({ frame: { studio, publicUrl }, about }: { frame: Frame; about:
         {studio.name}, {studio.place}. Answer this mail and one of us reads it.
       </Text>
       <Text style={LOOK.small}>
-        {about ? 'All of this is on the commission’s page as well. ' : ''}We are not told whether you open our mails.{' '}
-        <Link href={`${publicUrl}/privacy`} style={LOOK.link}>
-          What we keep about you
-        </Link>
+        {content.about ? 'All of this is on the commission’s page as well. ' : ''}We are not told whether you open our
+        mails. {privacy}
       </Text>
     </>
   );

@@ -15,6 +15,16 @@ const TITLE_FONT = "Fraunces, Georgia, 'Times New Roman', serif";
 /** Cuts the lower corners in where a mail program can; elsewhere the ground stays a plain rectangle. */
 const draft = (width: number) => `polygon(0 0, 100% 0, calc(100% - ${width}px) 100%, ${width}px 100%)`;
 
+const BUTTON: CSSProperties = {
+  display: 'inline-block',
+  fontSize: '16px',
+  lineHeight: '22px',
+  fontWeight: 700,
+  textDecoration: 'none',
+  padding: '14px 30px',
+  clipPath: draft(9),
+};
+
 const style = <T extends Record<string, CSSProperties>>(sheet: T): T => sheet;
 
 /** Styles of a letter. Mail programs read no style sheets, so every element carries its own. */
@@ -29,7 +39,7 @@ export const LOOK = style({
     lineHeight: '38px',
     fontWeight: 600,
     letterSpacing: '-0.8px',
-    margin: '36px 0 6px',
+    margin: '36px 0 8px',
   },
   piece: { fontSize: '16px', lineHeight: '24px', color: MUTED, margin: '0 0 24px' },
   text: { fontSize: '16px', lineHeight: '25px', margin: '0 0 14px' },
@@ -40,17 +50,9 @@ export const LOOK = style({
   turnYours: { backgroundColor: VERDIGRIS_TINT, padding: '16px 22px', margin: '24px 0 0', clipPath: draft(7) },
   turnOther: { borderTop: `1px solid ${HAIRLINE}`, borderBottom: `1px solid ${HAIRLINE}`, padding: '14px 0' },
   turnText: { fontSize: '16px', lineHeight: '24px', margin: 0 },
-  button: {
-    display: 'inline-block',
-    backgroundColor: MOLTEN,
-    color: SOOT,
-    fontSize: '16px',
-    lineHeight: '22px',
-    fontWeight: 700,
-    textDecoration: 'none',
-    padding: '14px 30px',
-    clipPath: draft(9),
-  },
+  button: { ...BUTTON, backgroundColor: GRAPHITE, color: CHALK },
+  /** The one act the reader is asked for. */
+  buttonMain: { ...BUTTON, backgroundColor: MOLTEN, color: SOOT },
   link: { color: GRAPHITE, textDecoration: 'underline' },
   table: { width: '100%', borderCollapse: 'collapse', fontVariantNumeric: 'tabular-nums' },
   label: {

@@ -10,6 +10,8 @@ export interface LetterContent {
   preview: string;
   /** Number and name of the commission, when the letter is about one. */
   about?: { ref: string; title: string };
+  /** Set on the studio's own copies: nobody signs a letter to themselves. */
+  toStudio?: boolean;
   /** The reader's name as they gave it. */
   name?: string;
   /** What happened. */

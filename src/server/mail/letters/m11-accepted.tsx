@@ -13,6 +13,7 @@ export const m11 = letter('M11', {
   body: (data, frame) => ({
     ...(data.reader === 'customer' ? forCustomer(data) : forOwner(data)),
     about: data,
+    toStudio: data.reader === 'owner',
     name: data.name,
     details: <Agreed data={data} frame={frame} />,
   }),

@@ -15,6 +15,7 @@ export const m16 = letter('M16', {
     heading: `The ${GATE_WORDS[data.gate].subject} is approved`,
     preview: `${data.photos} photos, ${momentInWords(data.approvedAt, frame.studio.timeZone)}.`,
     about: data,
+    toStudio: data.reader === 'owner',
     name: data.name,
     lead: (
       <P>

@@ -18,6 +18,7 @@ export const m2 = letter('M2', {
       heading: data.kind === 'enquiry' ? 'An enquiry came in' : 'Our questions are answered',
       preview: `${data.customer}, ${data.missing.length === 0 ? 'nothing missing' : `${data.missing.length} missing`}.`,
       about: data,
+      toStudio: true,
       name: data.name,
       lead: (
         <P>

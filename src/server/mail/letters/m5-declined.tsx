@@ -5,7 +5,7 @@ import { Note, P, Part } from './letter-parts';
 export const m5 = letter('M5', {
   subject: ({ ref }) => `About your enquiry ${ref}`,
   body: (data) => ({
-    heading: 'We cannot take this one on',
+    heading: 'We have to say no',
     preview: 'Why, and what could change it.',
     about: data,
     name: data.name,
@@ -15,7 +15,10 @@ export const m5 = letter('M5', {
         <Note words={data.reason} />
       </>
     ),
-    next: { turn: 'nobody', words: 'Nothing is owed, and we do nothing more about this enquiry.' },
+    next: {
+      turn: 'nobody',
+      words: 'This enquiry is closed. You owe us nothing, and another wish of yours is welcome.',
+    },
     link: { to: pageOf(data), label: 'See your enquiry' },
     ...(data.couldChange
       ? {
