@@ -1,0 +1,52 @@
+import { and, desc, eq, isNull } from 'drizzle-orm';
+import { may, type Actor } from '../commission/permissions';
+import { done, refuse, type Outcome } from '../commission/problem';
+import { commissions, tray } from './db/schema/commissions';
+import type { Services } from './services';
+
+/** Something that did not fit and waits for the owner. */
+export interface TrayItem {
+  id: string;
+  ref: string | null;
+  message: string;
+  data: Record<string, unknown>;
+  createdAt: string;
+}
+
+const FOR_OWNER = 'The tray is for the owner.';
+
+/** Everything in the tray that is not settled, newest first. */
+export async function readTray(services: Services, actor: Actor): Promise<Outcome<TrayItem[]>> {
+  if (!may(actor, 'payment:record')) return refuse(actor ? 'not-allowed' : 'sign-in-needed', FOR_OWNER);
+  const rows = await services.db
+    .select({ item: tray, ref: commissions.ref })
+    .from(tray)
+    .leftJoin(commissions, eq(commissions.id, tray.commissionId))
+    .where(isNull(tray.settledAt))
+    .orderBy(desc(tray.createdAt));
+  return done(
+    rows.map(({ item, ref }) => ({
+      id: item.id,
+      ref,
+      message: item.problem.message,
+      data: item.data as Record<string, unknown>,
+      createdAt: item.createdAt.toISOString(),
+    })),
+  );
+}
+
+/** Marks one item as dealt with; the row stays. A second press changes nothing. */
+export async function settleTrayItem(
+  services: Services,
+  actor: Actor,
+  id: string | undefined,
+): Promise<Outcome<{ settled: boolean }>> {
+  if (!may(actor, 'payment:record')) return refuse(actor ? 'not-allowed' : 'sign-in-needed', FOR_OWNER);
+  if (!id || !/^[0-9a-f-]{36}$/.test(id)) return refuse('not-found', 'There is no such item in the tray.');
+  const rows = await services.db
+    .update(tray)
+    .set({ settledAt: services.now(), settledBy: actor!.id })
+    .where(and(eq(tray.id, id), isNull(tray.settledAt)))
+    .returning({ id: tray.id });
+  return done({ settled: rows.length > 0 });
+}
