@@ -95,9 +95,23 @@ function offsetOutline(body: Sweep, view: View, n: number): Point[] {
   const edge = (s: Slice, d: number): Point => [s.place.x + s.place.nx * d, s.place.y + s.place.ny * d];
   const there = slices.map((s) => edge(s, plus(s.profile)));
   const back = slices.map((s) => edge(s, -minus(s.profile))).reverse();
-  const end = view === 'plan' ? endLine(there[there.length - 1]!, back[0]!, body.ends?.end) : [];
-  const start = view === 'plan' ? endLine(back[back.length - 1]!, there[0]!, body.ends?.start) : [];
+  const line = view === 'plan' ? endLine : endTaper;
+  const end = line(there[there.length - 1]!, back[0]!, body.ends?.end);
+  const start = line(back[back.length - 1]!, there[0]!, body.ends?.start);
   return [...there, ...end, ...back, ...start];
+}
+
+/** Share of the end's thickness left at the outermost place of a bulged end. */
+export const BULGE_TAPER = 0.4;
+
+/** A bulged end seen from the side: it reaches out by the bulge and thins on the way. */
+function endTaper(a: Point, b: Point, end: End | undefined): Point[] {
+  const width = Math.hypot(b[0] - a[0], b[1] - a[1]);
+  const bulge = end?.bulge ?? 0;
+  if (bulge <= 0 || width === 0) return [];
+  const [nx, ny] = [-(b[1] - a[1]) / width, (b[0] - a[0]) / width];
+  const at = (t: number): Point => [a[0] + (b[0] - a[0]) * t + nx * bulge, a[1] + (b[1] - a[1]) * t + ny * bulge];
+  return [at(0.5 - BULGE_TAPER / 2), at(0.5 + BULGE_TAPER / 2)];
 }
 
 /** Points between the two corners of an end: a parabola bent outwards by `bulge` mm, less a V-shaped notch. */

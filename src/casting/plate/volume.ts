@@ -1,7 +1,7 @@
-import type { Drawing, Knop } from '../drawing';
+import type { Drawing, End, Knop } from '../drawing';
 import { profileAlong } from './profile';
 import { blendedHeight, polygonArea, sectionPolygon } from './section';
-import { hollowSweep, lineStretch, slicesOf, type Sweep } from './sweep';
+import { BULGE_TAPER, hollowSweep, lineStretch, slicesOf, type Slice, type Sweep } from './sweep';
 
 /** Section areas integrated along a body by the trapezium rule, mm3. */
 function sweptVolume(body: Sweep, sections: Drawing['sections']): number {
@@ -10,7 +10,19 @@ function sweptVolume(body: Sweep, sections: Drawing['sections']): number {
   const sum = slices
     .slice(1)
     .reduce((total, s, i) => total + ((area[i]! + area[i + 1]!) / 2) * (s.at - slices[i]!.at), 0);
-  return sum * lineStretch(body);
+  const ends =
+    endVolume(area[0]!, slices[0]!, body.ends?.start) +
+    endVolume(area[area.length - 1]!, slices[slices.length - 1]!, body.ends?.end);
+  return sum * lineStretch(body) + ends;
+}
+
+/** What a bulged end adds (two thirds of width by bulge, thinning outwards) and a notch takes away, mm3. */
+function endVolume(areaMm2: number, slice: Slice, end: End | undefined): number {
+  const width = slice.profile.left + slice.profile.right;
+  if (!end || width === 0) return 0;
+  const bulge = (areaMm2 * (end.bulge ?? 0) * 2 * (1 + BULGE_TAPER)) / 6;
+  const notch = end.notch ? ((areaMm2 / width) * end.notch.depth * end.notch.width) / 2 : 0;
+  return bulge - notch;
 }
 
 /** A boss as a pyramid on a diamond foot, mm3 (V = base x height / 3). */
