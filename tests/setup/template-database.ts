@@ -1,11 +1,9 @@
-import { mkdirSync, mkdtempSync, rmSync } from 'node:fs';
-import { tmpdir } from 'node:os';
-import { join } from 'node:path';
 import pg from 'pg';
 import type { TestProject } from 'vitest/node';
 import { startCluster } from '../../src/launch/cluster';
 import { migrateDatabase } from '../../src/launch/migrate';
 import { freeBasePort } from '../../src/launch/ports';
+import { temporaryDataFolder } from './temporary-folder';
 
 declare module 'vitest' {
   interface ProvidedContext {
@@ -16,15 +14,13 @@ declare module 'vitest' {
 
 /** Starts a PostgreSQL for the tests alone and makes one migrated database that every test file clones. */
 export default async function setup(project: TestProject): Promise<() => Promise<void>> {
-  const parent = mkdtempSync(join(tmpdir(), 'pourwright-test-'));
-  const dataFolder = join(parent, 'data');
-  mkdirSync(dataFolder);
-  const cluster = await startCluster({ dataFolder, port: await freeBasePort(), durable: false });
+  const { folder, remove } = temporaryDataFolder();
+  const cluster = await startCluster({ dataFolder: folder, port: await freeBasePort(), durable: false });
   await makeTemplate(cluster.url);
   project.provide('clusterUrl', withDatabase(cluster.url, 'postgres'));
   return async () => {
     await cluster.stop();
-    rmSync(parent, { recursive: true, force: true });
+    remove();
   };
 }
 
