@@ -9,7 +9,8 @@ const HELP = `Starts a local stand-in: node --import tsx fakes/server.ts <stripe
   --webhook-secret S    the secret that signs them (for resend: whsec_ and a base64 key)
   --public-url URL      stripe: where people open the pay page
   --studio NAME         stripe: the name on the pay page when a session brings none
-  --settle-after N      stripe: seconds until a delayed payment arrives by itself`;
+  --settle-after N      stripe: seconds until a delayed payment arrives by itself
+  --until-stdin-ends    leave when the standard input closes, so as not to outlive the program that started this`;
 
 const flagsSchema = z.object({
   port: z.coerce.number().int().min(0).max(65535).default(0),
@@ -19,14 +20,15 @@ const flagsSchema = z.object({
   'public-url': z.url().optional(),
   studio: z.string().min(1).optional(),
   'settle-after': z.coerce.number().min(0).optional(),
+  'until-stdin-ends': z.boolean().default(false),
 });
 
 type Flags = z.infer<typeof flagsSchema>;
 
 /** Reads the command line; leaves with the help text when it makes no sense. */
 function readCommand(): { service: 'stripe' | 'resend'; flags: Flags } {
-  const text = { type: 'string' } as const;
-  const options = Object.fromEntries(Object.keys(flagsSchema.shape).map((name) => [name, text]));
+  const kind = (name: string) => ({ type: name === 'until-stdin-ends' ? 'boolean' : 'string' }) as const;
+  const options = Object.fromEntries(Object.keys(flagsSchema.shape).map((name) => [name, kind(name)]));
   try {
     const { values, positionals } = parseArgs({ options, allowPositionals: true });
     const service = z.enum(['stripe', 'resend']).parse(positionals[0]);
@@ -63,6 +65,7 @@ async function start(): Promise<void> {
   };
   process.on('SIGTERM', leave);
   process.on('SIGINT', leave);
+  if (flags['until-stdin-ends']) process.stdin.on('close', leave).resume();
 }
 
 start().catch((error: unknown) => {

@@ -1,5 +1,6 @@
 import type { AnswerLedger } from '../state/idempotency';
 import type { Strike } from '../state/faults';
+import { without } from '../state/rows';
 import { json, type FakeRequest, type FakeResponse } from '../web/message';
 import { MailRefusal, refusalAnswer } from './errors';
 import { readMail } from './mail-params';
@@ -123,7 +124,11 @@ function findWork(request: FakeRequest): Work {
     'POST webhooks': (world) => createWebhook(world, readJson(request.body)),
     'GET webhooks': (world) => {
       const { rows, more } = cut(world.tables.webhooks.newest(), query);
-      return { object: 'list', has_more: more, data: rows.map(({ signing_secret: _, object: _o, ...shown }) => shown) };
+      return {
+        object: 'list',
+        has_more: more,
+        data: rows.map((webhook) => without(webhook, 'signing_secret', 'object')),
+      };
     },
     'GET webhooks/:id': (world) => webhookOnFile(world, id),
     'DELETE webhooks/:id': (world) => removeWebhook(world, id),

@@ -58,7 +58,7 @@ export function createResendFake(options: ResendFakeOptions = {}): ResendFake {
 function createWorld(options: ResendFakeOptions): World {
   const store = new Store(options.stateFile ?? null);
   const clock = options.clock ?? (() => new Date());
-  const faults: FaultSwitches = new FaultSwitches(() => world.deliveries.wake());
+  const faults: FaultSwitches = new FaultSwitches(() => world.deliveries.hurry());
   const world: World = {
     store,
     tables: { mails: store.table('mails'), events: store.table('events'), webhooks: store.table('webhooks') },

@@ -94,7 +94,7 @@ export function mailPage(world: World, id: string): FakeResponse {
             class="letter"
             title="The mail as HTML"
             sandbox="allow-popups allow-popups-to-escape-sandbox"
-            srcdoc="${framed(mail.html)}"
+            srcdoc="${framed(mail, mail.html)}"
           ></iframe>`
       }
       <h2>As plain text</h2>
@@ -113,9 +113,13 @@ function fact(name: string, value: string): Html {
         <dd>${value}</dd>`;
 }
 
-/** Links of the mail open in a new tab, outside the frame that runs no script. */
-function framed(mailHtml: string): string {
-  return `<base target="_blank">${mailHtml}`;
+/** Links of the mail open in a new tab, outside the frame that runs no script; enclosed pictures stand in their places. */
+function framed(mail: Mail, mailHtml: string): string {
+  const shown = mail.attachments.reduce(
+    (text, { inline }) => (inline ? text.replaceAll(`cid:${inline.contentId}`, inline.dataUri) : text),
+    mailHtml,
+  );
+  return `<base target="_blank">${shown}`;
 }
 
 /** Mails as JSON, newest first; `to` picks those to exactly this address. */
@@ -123,7 +127,10 @@ export function inboxJson(world: World, query: URLSearchParams): FakeResponse {
   const to = query.get('to')?.trim().toLowerCase();
   return json(
     200,
-    world.tables.mails.newest().filter((mail) => !to || everybody(mail).includes(to)),
+    world.tables.mails
+      .newest()
+      .filter((mail) => !to || everybody(mail).includes(to))
+      .map((mail) => ({ ...mail, attachments: mail.attachments.map(({ filename, bytes }) => ({ filename, bytes })) })),
   );
 }
 

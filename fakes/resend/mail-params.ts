@@ -23,6 +23,8 @@ const tagText = z
 const attachment = z.looseObject({
   filename: z.string().optional(),
   content: z.string().optional(),
+  content_type: z.string().optional(),
+  content_id: z.string().optional(),
 });
 
 const mailSchema = z.looseObject({

@@ -1,5 +1,6 @@
 import { randomUUID } from 'node:crypto';
 import type { GetEmailResponseSuccess, ListEmail } from 'resend';
+import { without } from '../state/rows';
 import { MailRefusal } from './errors';
 import { readMail, type MailInput } from './mail-params';
 import { recordEvent } from './outcomes';
@@ -27,16 +28,21 @@ export function sendMail(world: World, input: MailInput): { id: string } {
     message_id: `<${id}@${domain}>`,
     last_event: 'queued',
     headers: input.headers ?? {},
-    attachments: (input.attachments ?? []).map((file) => ({
-      filename: file.filename ?? 'without a name',
-      bytes: Buffer.byteLength(file.content ?? '', 'base64'),
-    })),
+    attachments: (input.attachments ?? []).map(keptAttachment),
     history: [],
     outcomeAt: at.getTime() + world.outcomeAfterMs,
   };
   world.tables.mails.put(id, mail);
   recordEvent(world, id, 'email.sent');
   return { id };
+}
+
+function keptAttachment(file: NonNullable<MailInput['attachments']>[number]): Mail['attachments'][number] {
+  const content = file.content ?? '';
+  const kept = { filename: file.filename ?? 'without a name', bytes: Buffer.byteLength(content, 'base64') };
+  const picture = /^image\/(jpeg|png|gif|webp)$/.test(file.content_type ?? '');
+  if (!file.content_id || !picture) return kept;
+  return { ...kept, inline: { contentId: file.content_id, dataUri: `data:${file.content_type};base64,${content}` } };
 }
 
 const LARGEST_BATCH = 100;
@@ -73,8 +79,7 @@ function readInBatch(input: unknown, index: number, strict: boolean): MailInput 
 export function showMail(world: World, id: string): GetEmailResponseSuccess {
   const mail = world.tables.mails.get(id);
   if (!mail) throw new MailRefusal(404, 'not_found', 'Email not found');
-  const { headers: _h, attachments: _a, history: _y, outcomeAt: _o, ...shown } = mail;
-  return shown;
+  return without(mail, 'headers', 'attachments', 'history', 'outcomeAt');
 }
 
 /** One page of all mails, newest first. @throws MailRefusal for a wrong limit or an unknown id. */
@@ -83,10 +88,7 @@ export function listMails(
   query: URLSearchParams,
 ): { object: 'list'; has_more: boolean; data: ListEmail[] } {
   const { rows, more } = cut(world.tables.mails.newest(), query);
-  const data = rows.map((mail) => {
-    const { html: _html, text: _text, tags: _tags, object: _object, ...shown } = showMail(world, mail.id);
-    return shown;
-  });
+  const data = rows.map((mail) => without(showMail(world, mail.id), 'html', 'text', 'tags', 'object'));
   return { object: 'list', has_more: more, data };
 }
 

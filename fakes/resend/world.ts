@@ -6,7 +6,8 @@ import type { Store, Table } from '../state/store';
 /** A mail as kept: what the API shows of it, and what only the inbox page shows. */
 export type Mail = GetEmailResponseSuccess & {
   headers: Record<string, string>;
-  attachments: { filename: string; bytes: number }[];
+  /** `inline` is what the HTML shows by `cid:`, kept so that the inbox can show it too. */
+  attachments: { filename: string; bytes: number; inline?: { contentId: string; dataUri: string } }[];
   /** What became of it, oldest first. */
   history: { event: WebhookEvent; at: string }[];
   /** Unix milliseconds at which the receiving side answers; null once it has. */

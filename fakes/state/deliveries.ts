@@ -25,13 +25,13 @@ export type DeliveryOptions = {
   pack: (delivery: Delivery) => Parcel | null;
   hold: () => boolean;
   send?: Send;
-  /** First wait after a failure; doubles each time up to a minute. */
+  /** First wait after a failure; doubles each time up to 20 s. */
   retryBaseMs?: number;
 };
 
 /** Stripe's documented limit for live mode: attempts for up to three days. */
 const GIVE_UP_AFTER_MS = 3 * 24 * 60 * 60 * 1000;
-const LONGEST_WAIT_MS = 60_000;
+const LONGEST_WAIT_MS = 20_000;
 const ANSWER_WITHIN_MS = 10_000;
 const AT_ONCE = 8;
 
@@ -44,6 +44,7 @@ export class DeliveryQueue {
   readonly #table: Table<Delivery>;
   readonly #options: DeliveryOptions;
   readonly #waiting = new Set<string>();
+  readonly #byEvent = new Map<string, string[]>();
   readonly #underWay = new Map<string, Promise<void>>();
   readonly #closing = new AbortController();
   #timer: NodeJS.Timeout | null = null;
@@ -52,7 +53,7 @@ export class DeliveryQueue {
     this.#store = store;
     this.#table = store.table<Delivery>('deliveries');
     this.#options = options;
-    for (const delivery of this.#table.all()) if (delivery.state === 'waiting') this.#waiting.add(delivery.id);
+    for (const delivery of this.#table.all()) this.#index(delivery);
   }
 
   /** Adds a delivery inside the write that made the event; `wake` sends it afterwards. */
@@ -60,24 +61,12 @@ export class DeliveryQueue {
     const now = Date.now();
     const id = freshId('dl_');
     const fresh = { state: 'waiting', attempts: 0, lastStatus: null, lastError: null } as const;
-    this.#table.put(id, { id, event, endpoint, createdAt: now, nextAt: now, ...fresh });
-    this.#waiting.add(id);
+    this.#index(this.#table.put(id, { id, event, endpoint, createdAt: now, nextAt: now, ...fresh }));
   }
 
   /** All deliveries of one event, oldest first. */
   of(event: string): Delivery[] {
-    return this.#table.all().filter((delivery) => delivery.event === event);
-  }
-
-  /** Every delivery by event id, for lists that show many events at once. */
-  byEvent(): Map<string, Delivery[]> {
-    const groups = new Map<string, Delivery[]>();
-    for (const delivery of this.#table.all()) {
-      const group = groups.get(delivery.event);
-      if (group) group.push(delivery);
-      else groups.set(delivery.event, [delivery]);
-    }
-    return groups;
+    return (this.#byEvent.get(event) ?? []).flatMap((id) => this.#table.get(id) ?? []);
   }
 
   /** Makes what waits due at once: after a start, or when somebody asks for it. */
@@ -117,6 +106,13 @@ export class DeliveryQueue {
     this.#closing.abort();
     if (this.#timer) clearTimeout(this.#timer);
     await this.settled();
+  }
+
+  #index(delivery: Delivery): void {
+    const ids = this.#byEvent.get(delivery.event);
+    if (ids) ids.push(delivery.id);
+    else this.#byEvent.set(delivery.event, [delivery.id]);
+    if (delivery.state === 'waiting') this.#waiting.add(delivery.id);
   }
 
   #start(delivery: Delivery): void {

@@ -47,7 +47,7 @@ export class FaultSwitches {
   #faults: Faults = NONE;
   readonly #changed: () => void;
 
-  /** `changed` runs after each change, such as to send webhooks that were held. */
+  /** `changed` runs after each change: it sends at once every webhook that was held or waits for its next attempt. */
   constructor(changed: () => void) {
     this.#changed = changed;
   }

@@ -2,6 +2,7 @@ import { createHmac } from 'node:crypto';
 import { z } from 'zod';
 import type { Delivery, Parcel } from '../state/deliveries';
 import { freshId } from '../state/ids';
+import { without } from '../state/rows';
 import { mergeMetadata } from './customers';
 import { noSuch } from './errors';
 import { eventOnWire } from './events';
@@ -79,8 +80,8 @@ export function packEvent(world: World, delivery: Delivery): Parcel | null {
 }
 
 /** The secret is shown once, in the answer to the creation. */
-function withoutSecret({ secret: _, ...endpoint }: Endpoint): Omit<Endpoint, 'secret'> {
-  return endpoint;
+function withoutSecret(endpoint: Endpoint): Omit<Endpoint, 'secret'> {
+  return without(endpoint, 'secret');
 }
 
 function endpointOnFile(world: World, id: string): Endpoint {

@@ -55,13 +55,12 @@ const listSchema = z.strictObject({
 });
 
 function list(world: World, input: z.output<typeof listSchema>): ListAnswer<EventOnWire> {
-  const deliveries = world.deliveries.byEvent();
   const wanted = world.tables.events
     .newest()
     .filter((event) => inRange(event.created, input.created))
     .filter((event) => !input.type || matches(event.type, input.type))
     .filter((event) => !input.types || input.types.some((type) => matches(event.type, type)))
-    .map((event) => eventOnWire(event, deliveries.get(event.id) ?? []))
+    .map((event) => eventOnWire(event, world.deliveries.of(event.id)))
     .filter(
       (event) => input.delivery_success === undefined || (event.pending_webhooks === 0) === input.delivery_success,
     );

@@ -68,7 +68,7 @@ export function createStripeFake(options: StripeFakeOptions = {}): StripeFake {
 function createWorld(options: StripeFakeOptions, publicUrl: () => string): World {
   const store = new Store(options.stateFile ?? null);
   const clock = options.clock ?? (() => new Date());
-  const faults: FaultSwitches = new FaultSwitches(() => world.deliveries.wake());
+  const faults: FaultSwitches = new FaultSwitches(() => world.deliveries.hurry());
   const world: World = {
     store,
     tables: openTables(store),

@@ -17,7 +17,6 @@ export function overviewPage(world: World, problem?: string): FakeResponse {
   const sessions = world.tables.sessions.newest().slice(0, SHOWN);
   const refunds = world.tables.refunds.newest().slice(0, SHOWN);
   const events = world.tables.events.newest().slice(0, SHOWN);
-  const deliveries = world.deliveries.byEvent();
   return page({
     status: problem ? 400 : 200,
     title: 'Payments on this machine',
@@ -49,7 +48,7 @@ export function overviewPage(world: World, problem?: string): FakeResponse {
           ? html`<p class="muted">None yet.</p>`
           : table(
               ['Event', 'When', 'Delivery', 'Play'],
-              events.map((event) => eventRow(event, deliveries.get(event.id) ?? [])),
+              events.map((event) => eventRow(event, world.deliveries.of(event.id))),
             )
       }`,
   });
@@ -82,7 +81,7 @@ function table(heads: string[], rows: Html[]): Html {
   return html`<table class="lines stack">
     <thead>
       <tr>
-        ${heads.map((head) => html`<th scope="col">${head}</th>`)}
+        ${heads.map((head) => html`<th scope="col" class="${head === 'Amount' ? 'money' : ''}">${head}</th>`)}
       </tr>
     </thead>
     <tbody>
@@ -98,7 +97,7 @@ function sessionRow(world: World, session: Stripe.Checkout.Session): Html {
     <td>${lines.map((line) => line.description).join(', ')}</td>
     <td>${session.customer_details?.email ?? 'not said yet'}</td>
     <td><span class="state ${state.mood}">${state.text}</span></td>
-    <td>${money(session.amount_total, session.currency)}</td>
+    <td class="money">${money(session.amount_total, session.currency)}</td>
     <td>
       <div class="acts">
         ${session.status === 'open' && html`<a href="/pay/${session.id}">Open the pay page</a>${button('expire', session.id, 'Expire it')}`}
@@ -131,7 +130,7 @@ function refundRow(world: World, refund: Stripe.Refund): Html {
         >${refund.status ?? ''}</span
       >
     </td>
-    <td>${money(refund.amount, refund.currency)}</td>
+    <td class="money">${money(refund.amount, refund.currency)}</td>
     <td>
       <div class="acts">
         ${waits === 'arrive' && button('refund-arrives', refund.id, 'Let it arrive')}${waits && button('refund-fails', refund.id, 'Let it fail')}

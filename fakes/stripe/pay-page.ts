@@ -28,7 +28,7 @@ export function payForm({ session, notes }: Shown, form: PayForm): FakeResponse 
     notes,
     form.problem ? 402 : 200,
     `Pay ${total}`,
-    html` <h1>Pay ${total} to ${notes.studio}</h1>
+    html` <h1>Pay ${notes.studio}</h1>
       ${form.problem && html`<p class="said bad" role="alert">${form.problem} Nothing was taken. Choose another way to pay below.</p>`}
       ${lines(notes, total)}
       <form method="post" action="/pay/${session.id}">

@@ -30,7 +30,8 @@ a:hover { color: var(--verdigris); }
 .lines { width: 100%; border-collapse: collapse; margin: 1rem 0; }
 .lines th, .lines td { text-align: left; vertical-align: top; padding: 0.625rem 1rem 0.625rem 0; border-bottom: 1px solid var(--hairline); font-weight: 400; overflow-wrap: anywhere; }
 .lines thead th { color: var(--muted); font-size: 0.875rem; }
-.lines .money { text-align: right; padding-right: 0; white-space: nowrap; }
+.lines .money { text-align: right; white-space: nowrap; }
+.lines .money:last-child { padding-right: 0; }
 .lines .total > * { border-top: 2px solid var(--graphite); border-bottom: 0; font-weight: 700; font-size: 1.125rem; }
 .state { font-weight: 600; }
 .state.good { color: var(--verdigris); }
@@ -55,9 +56,10 @@ button:focus-visible, .button:focus-visible { outline-color: var(--chalk); outli
 button.plain:focus-visible { outline-color: var(--verdigris); outline-offset: 2px; }
 .acts { display: flex; flex-wrap: wrap; gap: 0.5rem 1.25rem; align-items: center; margin: 1.5rem 0 0; }
 .acts form { margin: 0; }
-td .acts { margin: 0; }
+td .acts { margin: -0.375rem 0; }
 .search { display: flex; flex-wrap: wrap; gap: 0.75rem; align-items: end; margin: 1.25rem 0; }
 .search label { flex: 1 1 14rem; max-width: 26rem; }
+.search button { min-height: 2.875rem; }
 .letters { list-style: none; margin: 1rem 0; padding: 0; border-top: 1px solid var(--hairline); }
 .letters a { display: grid; grid-template-columns: 14rem 1fr auto; gap: 0 1.5rem; padding: 0.75rem 0; border-bottom: 1px solid var(--hairline); text-decoration: none; overflow-wrap: anywhere; }
 .letters a:hover .subject { text-decoration: underline; }
@@ -74,6 +76,7 @@ summary { cursor: pointer; min-height: 1.75rem; }
   .stack tr { display: block; border-bottom: 1px solid var(--hairline); padding: 0.625rem 0; }
   .stack td, .stack th { display: block; border: 0; padding: 0.0625rem 0; }
   .stack .money { text-align: left; }
+  .stack td .acts { margin: 0; }
   .letters a { grid-template-columns: 1fr; }
   dl.facts { grid-template-columns: 1fr; gap: 0 0; }
   dl.facts dd { margin-bottom: 0.375rem; }
