@@ -1,14 +1,13 @@
 import type { IncomingMessage, OutgoingHttpHeaders, ServerResponse } from 'node:http';
+import { join } from 'node:path';
 import send from 'send';
-
-/** Percent-encoded `uploads/…` without dot segments. */
-const INSIDE_UPLOADS = /^uploads%2F(?!.*(^|%2F)\.)[\w%.-]+$/;
 
 /**
  * Streams a stored file as the answer, with ranges, conditional requests and at the reader's pace.
  * The headers already set on `res` stay.
  *
- * @param path what `fileResponse` put in the header: a path inside `folder`, percent-encoded
+ * @param path what `fileResponse` put in the header: a path that begins with `uploads/`, percent-encoded
+ * @param folder the data folder
  */
 export function deliverFile(
   req: IncomingMessage,
@@ -17,20 +16,33 @@ export function deliverFile(
   path: string,
   onError: (error: Error) => void,
 ): void {
-  if (!INSIDE_UPLOADS.test(path)) throw new Error(`a file outside the uploads was named: ${path}`);
-  const stream = send(req, path, { root: folder, index: false, cacheControl: false, dotfiles: 'deny' });
-  stream.on('error', (error: Error & { status?: number }) => {
+  const [room, ...parts] = decodeURIComponent(path).split('/');
+  const fail = (error: Error & { status?: number }) => {
     onError(error);
-    if (res.headersSent) {
-      res.destroy();
-      return;
-    }
-    for (const name of ['content-type', 'content-disposition', 'content-security-policy']) res.removeHeader(name);
-    res.statusCode = error.status === 416 ? 416 : 404;
-    res.setHeader('content-type', 'text/plain; charset=utf-8');
-    res.end(res.statusCode === 416 ? 'The file has no such range.\n' : 'This file is no longer here.\n');
+    answerMissing(res, error.status === 416 ? 416 : 404);
+  };
+  // The name is relative to `uploads/`, which `send` never leaves; any other folder holds secrets.
+  if (room !== 'uploads') return fail(new Error(`a file outside the uploads was named: ${path}`));
+  const stream = send(req, encodeURIComponent(parts.join('/')), {
+    root: join(folder, 'uploads'),
+    index: false,
+    cacheControl: false,
+    dotfiles: 'deny',
   });
+  stream.on('error', fail);
+  stream.on('directory', () => fail(new Error(`a folder was named: ${path}`)));
   stream.pipe(res);
+}
+
+function answerMissing(res: ServerResponse, status: 404 | 416): void {
+  if (res.headersSent) {
+    res.destroy();
+    return;
+  }
+  for (const name of ['content-type', 'content-disposition', 'content-security-policy']) res.removeHeader(name);
+  res.statusCode = status;
+  res.setHeader('content-type', 'text/plain; charset=utf-8');
+  res.end(status === 416 ? 'The file has no such range.\n' : 'This file is no longer here.\n');
 }
 
 /** Sees the status and headers of an answer just before they are sent, and gives back those to send. */

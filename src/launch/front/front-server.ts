@@ -127,10 +127,12 @@ function limitTimes(server: Server): void {
 
 async function drain(server: Server, streams: Set<ServerResponse>, patience: number): Promise<void> {
   const closed = new Promise<void>((resolve) => server.close(() => resolve()));
-  server.closeIdleConnections();
+  // A connection whose answer is finished is idle from then on; nobody else would close it.
+  const sweep = setInterval(() => server.closeIdleConnections(), 50);
   // A page that listens for news connects again by itself, to the next server.
   for (const stream of streams) stream.destroy();
   const timer = setTimeout(() => server.closeAllConnections(), patience);
   await closed;
   clearTimeout(timer);
+  clearInterval(sweep);
 }
