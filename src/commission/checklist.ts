@@ -119,37 +119,37 @@ export function suggestQuestions(facts: EnquiryFacts): Suggestion[] {
   return ITEMS.filter((item) => item.asks(facts)).map(({ id, text, why }) => ({ id, text, why }));
 }
 
+const questionSchema = z.object({
+  text: z.string('Write the question.').trim().min(5, 'Write the question.').max(600, 'Shorten the question.'),
+  why: z
+    .string('Say why it matters.')
+    .trim()
+    .min(5, 'Say why it matters; people answer what they understand.')
+    .max(600, 'Shorten the reason.'),
+});
+
 /** Questions as the owner asks them: one to five, each with the reason it matters (T2). */
 export const askSchema = z.preprocess(
-  (input) => withoutEmpty(unflatten(input)),
+  (input) => markEmpty(unflatten(input)),
   z.object({
     questions: z
-      .array(
-        z.object({
-          text: z.string('Write the question.').trim().min(5, 'Write the question.').max(600, 'Shorten the question.'),
-          why: z
-            .string('Say why it matters.')
-            .trim()
-            .min(5, 'Say why it matters; people answer what they understand.')
-            .max(600, 'Shorten the reason.'),
-        }),
-        'Ask at least one question.',
-      )
-      .min(1, 'Ask at least one question.')
-      .max(5, 'Ask at most five questions at once; the rest can wait for the answers.'),
+      .array(questionSchema.nullable(), 'Ask at least one question.')
+      .transform((list) => list.filter((question) => question !== null))
+      .refine((list) => list.length > 0, 'Ask at least one question.')
+      .refine((list) => list.length <= 5, 'Ask at most five questions at once; the rest can wait for the answers.'),
   }),
 );
 export type Ask = z.output<typeof askSchema>;
 
-function withoutEmpty(input: unknown): unknown {
+function markEmpty(input: unknown): unknown {
   if (typeof input !== 'object' || input === null || !('questions' in input)) return input;
   const list = input.questions;
   if (!Array.isArray(list)) return input;
-  const filled = list.filter((item: unknown) => {
-    const { text = '', why = '' } = (item ?? {}) as { text?: unknown; why?: unknown };
-    return String(text).trim() !== '' || String(why).trim() !== '';
+  const questions = list.map((item: unknown) => {
+    const { text = '', why = '' } = (item ?? {}) as Record<string, unknown>;
+    return String(text).trim() === '' && String(why).trim() === '' ? null : item;
   });
-  return { ...input, questions: filled };
+  return { ...input, questions };
 }
 
 /** Answers by the question's id; an empty one is simply not given yet. `send` asks for T3. */
