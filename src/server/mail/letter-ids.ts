@@ -21,3 +21,26 @@ export const LETTER_IDS = [
   'M26',
 ] as const;
 export type LetterId = (typeof LETTER_IDS)[number];
+
+/** What each letter is about, for the owner's log. */
+export const LETTER_NAMES: Record<LetterId, string> = {
+  M0: 'Sign-in',
+  M1: 'Enquiry received',
+  M2: 'Enquiry came in',
+  M3: 'Questions',
+  M5: 'Declined',
+  M6: 'Estimate',
+  M7: 'Quote',
+  M8: 'Revised quote',
+  M11: 'Accepted',
+  M12: 'Payment booked',
+  M13: 'First payment not seen',
+  M14: 'About to start',
+  M15: 'Look and approve',
+  M16: 'Approved',
+  M19: 'Progress',
+  M20: 'A pour failed',
+  M23: 'Finished',
+  M24: 'Sent',
+  M26: 'Delivered',
+};

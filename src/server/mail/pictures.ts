@@ -1,9 +1,13 @@
 import { inArray } from 'drizzle-orm';
-import { readFile } from 'node:fs/promises';
-import { join } from 'node:path';
+import sharp from 'sharp';
 import { photos } from '../db/schema/making';
 import type { Services } from '../services';
+import { pathOf } from '../storage/disk';
 import type { Picture } from './letter-data';
+
+/** Pixels across: twice the width a letter shows it at on a small screen. */
+const WIDEST = 960;
+const QUALITY = 76;
 
 /** A photo that travels inside the mail; the letter shows it as `cid:<photoId>`. */
 export interface EnclosedPicture {
@@ -15,8 +19,8 @@ export interface EnclosedPicture {
 const MOST_BYTES = 900_000;
 
 /**
- * Reads the pictures a letter shows, each in the largest of its small sizes that still fits. A picture whose
- * file is gone or does not fit is left out; its caption still tells of it.
+ * Reads the pictures a letter shows, as JPEG, which every mail program opens. A picture whose file is gone, or that
+ * would make the mail too heavy, is left out; its caption still tells of it.
  */
 export async function readPictures(services: Services, wanted: Picture[]): Promise<EnclosedPicture[]> {
   if (wanted.length === 0) return [];
@@ -28,23 +32,23 @@ export async function readPictures(services: Services, wanted: Picture[]): Promi
   const enclosed: EnclosedPicture[] = [];
   let left = MOST_BYTES;
   for (const photoId of new Set(ids)) {
-    const files = rows.find((row) => row.id === photoId)?.files;
-    const content = files && (await readFitting(services, [files.medium.key, files.thumb.key], left));
-    if (!content) continue;
+    const key = rows.find((row) => row.id === photoId)?.files.medium.key;
+    const content = key === undefined ? null : await asJpeg(services, key);
+    if (!content || content.length > left) continue;
     left -= content.length;
     enclosed.push({ photoId, content });
   }
   return enclosed;
 }
 
-async function readFitting(services: Services, keys: string[], most: number): Promise<Buffer | null> {
-  for (const key of keys) {
-    try {
-      const content = await readFile(join(services.config.uploadsFolder, key));
-      if (content.length <= most) return content;
-    } catch (error) {
-      services.log.warn({ err: error, key }, 'a photo for a mail could not be read');
-    }
+async function asJpeg({ config, log }: Services, key: string): Promise<Buffer | null> {
+  try {
+    return await sharp(pathOf(config.uploadsFolder, key))
+      .resize({ width: WIDEST, withoutEnlargement: true })
+      .jpeg({ quality: QUALITY })
+      .toBuffer();
+  } catch (error) {
+    log.warn({ err: error, key }, 'a photo for a mail could not be read');
+    return null;
   }
-  return null;
 }

@@ -16,6 +16,8 @@ const FINAL: readonly ErrorResponse['name'][] = [
 export function judgeRefusal(error: Pick<ErrorResponse, 'name' | 'statusCode'>): 'give-up' | 'look' | 'again' {
   // Another body under the same key: an earlier try of this mail was taken, whatever its answer was.
   if (error.name === 'invalid_idempotent_request') return 'look';
+  // A key or a sender's domain that is not accepted is cured in the settings, and then the mail may go.
+  if (error.statusCode === 401 || error.statusCode === 403) return 'again';
   if (FINAL.includes(error.name) || error.statusCode === 422) return 'give-up';
   return 'again';
 }
@@ -44,7 +46,8 @@ export function refusalInWords(error: Pick<ErrorResponse, 'name' | 'message' | '
   if (error.statusCode === null) return 'The mail service could not be reached.';
   if (error.name === 'rate_limit_exceeded') return 'The mail service asked for a pause between mails.';
   if (error.name.endsWith('_quota_exceeded')) return 'The mail service’s allowance for this period is used up.';
-  if (error.name.endsWith('_api_key')) return 'The mail service does not accept our key. Check RESEND_API_KEY.';
+  if (error.statusCode === 401 || error.name.endsWith('_api_key'))
+    return 'The mail service does not accept our key. Check RESEND_API_KEY.';
   if (error.statusCode >= 500) return 'The mail service is having trouble of its own.';
   return `The mail service refused it: ${error.message}`;
 }

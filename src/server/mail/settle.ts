@@ -24,6 +24,16 @@ export async function markSent(db: Db, mail: Settled, providerId: string | null,
     .where(and(eq(mails.id, mail.id), eq(mails.state, 'queued')));
 }
 
+/** Notes that the mail reached its mailbox; false when it was known, or came to nothing since. */
+export async function markDelivered(db: Db, mail: Settled, providerId: string, at: Date): Promise<boolean> {
+  const delivered = await db
+    .update(mails)
+    .set({ ...forget(mail), state: 'delivered', providerId, settledAt: at, lastError: null })
+    .where(and(eq(mails.id, mail.id), inArray(mails.state, ['queued', 'sent'])))
+    .returning({ id: mails.id });
+  return delivered.length > 0;
+}
+
 /** Notes why a try failed; the mail stays queued. */
 export async function markTried(db: Db, mailId: string, words: string): Promise<void> {
   await db
