@@ -25,13 +25,13 @@ function cornerName(t: Triangle, corner: number, seed: number): number {
   return hash;
 }
 
-const LANES = 4;
+const LANES = 2;
 
 /**
  * Watches the edges of a surface. A surface bounds a solid exactly when every edge is walked as often one way as the
  * other; then its volume does not depend on the origin. Two answers:
- * - `balanced`, in fixed memory at any size: four 32-bit sums over the names of directed edges, one way added and the
- *   other way subtracted; a wrong "yes" has a chance of about 2^-128.
+ * - `balanced`, in fixed memory at any size: two 32-bit sums over the names of directed edges, one way added and the
+ *   other way subtracted; a wrong "yes" has a chance of about 2^-64.
  * - `openEdges`, the number without a partner, by keeping the unmatched ones: at most a million at a time, else null.
  */
 export function createEdgeBalance() {

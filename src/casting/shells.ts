@@ -1,7 +1,7 @@
 import type { Triangle } from './stl-problems';
 
-/** Surfaces with more corners than this are not counted, to stay within about 40 MB. */
-const MOST_CORNERS = 250_000;
+/** Surfaces with more corners than this are not counted, to stay within about 20 MB. */
+const MOST_CORNERS = 100_000;
 
 /** Counts the separate surfaces of a file: triangles that share a corner belong together. Null for very large files. */
 export function createShellCount() {

@@ -30,22 +30,27 @@ function countOf(head: Uint8Array): number {
   return new DataView(head.buffer, head.byteOffset, head.byteLength).getUint32(80, true);
 }
 
-/** Text that begins with "solid": no control characters but white space. A binary count has zero bytes in it. */
-function looksAscii(head: Uint8Array): boolean {
-  const control = head.some((byte) => byte < 32 && byte !== 9 && byte !== 10 && byte !== 13);
-  return !control && /^\s*solid\b/i.test(new TextDecoder('latin1').decode(head));
+/** No control characters but white space. A binary STL's count has zero bytes in it. */
+function isText(head: Uint8Array): boolean {
+  return !head.some((byte) => byte < 32 && byte !== 9 && byte !== 10 && byte !== 13);
 }
 
-function detect(head: Uint8Array, size: number | undefined): 'binary' | 'ascii' | StlProblem {
+const notStl = (message: string): StlProblem => ({ code: 'not-stl', message });
+
+function detect(head: Uint8Array, size: number | undefined, most: number): 'binary' | 'ascii' | StlProblem {
   if (head.length === 0) return { code: 'empty', message: 'The file is empty.' };
   const headed = head.length >= HEADER_BYTES;
-  if (headed && size !== undefined && HEADER_BYTES + countOf(head) * RECORD_BYTES === size) return 'binary';
-  if (looksAscii(head)) return 'ascii';
-  if (headed) return 'binary';
-  return {
-    code: 'not-stl',
-    message: `The file is ${head.length} bytes long; even an empty binary STL has ${HEADER_BYTES}.`,
-  };
+  const bytes = headed ? HEADER_BYTES + countOf(head) * RECORD_BYTES : 0;
+  if (headed && bytes === size) return 'binary';
+  if (isText(head)) {
+    const solid = /^\s*solid\b/i.test(new TextDecoder('latin1').decode(head));
+    return solid ? 'ascii' : notStl('The file is text, but it does not begin with "solid": it is no STL.');
+  }
+  if (!headed) return notStl(`The file is ${head.length} bytes long; even an empty binary STL has ${HEADER_BYTES}.`);
+  const alien = size !== undefined && countOf(head) > most && bytes > size * 4;
+  return alien
+    ? notStl('The file’s length does not fit a binary STL at all: it is some other kind of file.')
+    : 'binary';
 }
 
 function joined(parts: readonly Uint8Array[]): Uint8Array {
@@ -92,7 +97,7 @@ export function createStlReader(options: StlOptions = {}) {
   function begin(): void {
     const head = joined(waiting);
     waiting.length = 0;
-    const found = detect(head.subarray(0, HEAD_BYTES), options.size);
+    const found = detect(head.subarray(0, HEAD_BYTES), options.size, most);
     if (typeof found !== 'string') {
       problem = found;
       return;

@@ -39,7 +39,7 @@ export function createTriangleSums() {
       const [ux, uy, uz] = [t[3] - t[0], t[4] - t[1], t[5] - t[2]];
       const [vx, vy, vz] = [t[6] - t[0], t[7] - t[1], t[8] - t[2]];
       const [nx, ny, nz] = [uy * vz - uz * vy, uz * vx - ux * vz, ux * vy - uy * vx];
-      const twice = Math.hypot(nx, ny, nz);
+      const twice = Math.sqrt(nx * nx + ny * ny + nz * nz);
       area.add(twice / 2);
       volume.add(((t[0] - ox) * nx + (t[1] - oy) * ny + (t[2] - oz) * nz) / 6);
       return twice > 0;
