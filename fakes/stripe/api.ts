@@ -12,7 +12,7 @@ import { readForm } from './form';
 import { intentRoutes } from './intents';
 import { refundRoutes } from './refunds';
 import { findRoute, type Route } from './routes';
-import { expireOverdue, sessionRoutes } from './sessions';
+import { sessionRoutes } from './sessions';
 import { API_VERSION, type World } from './world';
 
 /** The one key that is taken. */
@@ -154,7 +154,6 @@ async function work(
   keep: (answer: FakeResponse) => void,
 ): Promise<FakeResponse> {
   if (strike.delayMs > 0) await new Promise((resolve) => setTimeout(resolve, strike.delayMs));
-  expireOverdue(world);
   const found = findRoute(ROUTES, request.method, request.url.pathname);
   if (!found) throw new Refusal(404, `Unrecognized request URL (${request.method}: ${request.url.pathname}).`);
   const query = request.method === 'POST' ? request.body : request.url.search.slice(1);

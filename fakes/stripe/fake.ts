@@ -51,7 +51,10 @@ export function createStripeFake(options: StripeFakeOptions = {}): StripeFake {
   world.deliveries.hurry();
   const clockwork = setInterval(() => passTime(world, options.settleAfterSeconds), 1000).unref();
   return {
-    handle: (request) => answer(world, ledger, request),
+    handle: (request) => {
+      passTime(world, options.settleAfterSeconds);
+      return answer(world, ledger, request);
+    },
     faults: world.faults,
     setPublicUrl: (url) => {
       publicUrl = url;
@@ -108,7 +111,6 @@ async function answer(world: World, ledger: AnswerLedger, request: FakeRequest):
   const path = request.url.pathname;
   if (path.startsWith('/v1/') || path.startsWith('/v2/')) return answerApi(world, ledger, request);
   if (path === '/__control') return world.faults.answer(request);
-  expireOverdue(world);
   const file = lookFile(path);
   if (file) return file;
   if (path === '/' && request.method === 'GET') return overviewPage(world);

@@ -180,6 +180,16 @@ test.each([
   expect(told.data.map((one) => one.type)).toEqual([event, 'checkout.session.completed']);
 });
 
+test('a delayed debit arrives by itself when the fake was told after how long', async () => {
+  const { stripe, fake } = await runStripe({ settleAfterSeconds: 3600 });
+  const made = await stripe.checkout.sessions.create(deposit());
+  await postForm(made.url ?? '', { choice: 'debit' });
+  fake.faults.set({ advanceSeconds: 3500 });
+  expect((await stripe.checkout.sessions.retrieve(made.id)).payment_status).toBe('unpaid');
+  fake.faults.set({ advanceSeconds: 3700 });
+  expect((await stripe.checkout.sessions.retrieve(made.id)).payment_status).toBe('paid');
+});
+
 test('a session ends when its time is over or when it is asked to, and cannot be paid then', async () => {
   const { stripe, url, fake } = await runStripe();
   const early = await stripe.checkout.sessions.create(deposit());
