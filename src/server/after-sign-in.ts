@@ -1,6 +1,7 @@
 import { and, eq, isNull, sql } from 'drizzle-orm';
 import type { Actor } from '../commission/permissions';
 import { endSessions } from './auth/session';
+import { confirmEnquiries } from './confirm-enquiries';
 import type { Transaction } from './db/client';
 import { invitations, users } from './db/schema/people';
 import type { Services } from './services';
@@ -8,7 +9,9 @@ import type { Services } from './services';
 type User = NonNullable<Actor>;
 
 /** What an address proves by signing in, each done in the sign-in's own transaction. */
-const CONSEQUENCES: ((tx: Transaction, user: User, services: Services) => Promise<unknown>)[] = [];
+const CONSEQUENCES: ((tx: Transaction, user: User, services: Services) => Promise<unknown>)[] = [
+  (tx, user, { now }) => confirmEnquiries(tx, user, now()),
+];
 
 /** Gives an invited person their role, then does everything that waited for this address to be confirmed. */
 export async function afterSignIn(
