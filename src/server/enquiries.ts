@@ -11,6 +11,7 @@ import type { Db, Transaction } from './db/client';
 import { commissions } from './db/schema/commissions';
 import { checkEnquiry, type CheckedEnquiry } from './enquiry-check';
 import type { Services } from './services';
+import { mailSignIn } from './sign-in';
 import { readStudio } from './studio';
 
 /** Who sends an enquiry, as far as limits and files need to know. */
@@ -47,6 +48,8 @@ export async function sendEnquiry(
   if (!allowed.ok) return allowed;
   const checked = await checkEnquiry(services, actor, input);
   if (!checked.ok) return checked;
+  const mayMail = actor ? done(null) : await limit(services, 'link-address', checked.value.email);
+  if (!mayMail.ok) return mayMail;
   return services.db.transaction(async (tx) => {
     const files = await findClaimable(tx, input.uploads, sender.browserId, actor);
     if (!files.ok) return files;
@@ -54,8 +57,15 @@ export async function sendEnquiry(
     if (!row) return (await knownEnquiry(tx, actor, sender, input.clientId)) ?? lostNumber();
     await claimUploads(tx, row, files.value);
     if (row.confirmedAt) await welcomeEnquiry(tx, row, actor, row.confirmedAt);
+    else await askToConfirm(tx, services, row);
     return done(sentOf(row));
   });
+}
+
+/** Mails a guest the link and code that confirm the address and lead to the commission's page. */
+function askToConfirm(tx: Transaction, services: Services, row: CommissionRow): Promise<void> {
+  const { ref, title, email } = row;
+  return mailSignIn(tx, services, { email, next: `/commissions/${ref}`, enquiry: { ref, title } });
 }
 
 async function insertEnquiry(

@@ -1,0 +1,23 @@
+import type { APIRoute } from 'astro';
+import { enquirySchema } from '../../../commission/enquiry';
+import { rememberAsked, visitorOf } from '../../../server/auth/door-cookies';
+import { answer, readInput } from '../../../server/door';
+import { sendEnquiry } from '../../../server/enquiries';
+
+export const prerender = false;
+
+/** Takes in an enquiry; a guest is led to the page where the mailed code is typed. */
+export const POST: APIRoute = async (context) => {
+  const { services, user, browserId } = context.locals;
+  const { client } = visitorOf(context);
+  const input = await readInput(context, enquirySchema);
+  const outcome = input.ok ? await sendEnquiry(services, user, { browserId, client }, input.value) : input;
+  if (outcome.ok && !outcome.value.confirmed) rememberAsked(services.config, context, outcome.value.email);
+  return answer(context, outcome, {
+    to: ({ ref, confirmed }) => {
+      if (user?.role === 'owner') return `/studio/commissions/${ref}`;
+      return confirmed ? `/commissions/${ref}` : `/sign-in/code?enquiry=${ref}`;
+    },
+    back: '/price#enquiry',
+  });
+};
