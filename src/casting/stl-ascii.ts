@@ -97,13 +97,12 @@ export function createAsciiReader(sink: TriangleSink) {
     push(chunk: Uint8Array): void {
       if (!problem) lines(decoder.decode(chunk, { stream: true }));
     },
+    /** A last line without its end was cut off, so what is wrong with it says nothing else. */
     finish(): StlProblem | null {
-      if (!problem) {
-        lines(decoder.decode());
-        line(rest);
-      }
+      if (!problem) lines(decoder.decode());
       if (problem) return problem;
-      if (ended && !open && !corners) return null;
+      line(rest);
+      if (!problem && ended && !open && !corners) return null;
       return {
         code: 'truncated',
         message: `The file ends at line ${lineNumber} without "endsolid". It was cut off: send it again.`,
