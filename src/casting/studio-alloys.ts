@@ -73,9 +73,10 @@ export function elementName(symbol: string): string {
   return elements[symbol] ?? symbol;
 }
 
-/** A composition in words: "copper 90 %, tin 10 %". */
+/** A composition in words: "Copper 90 %, tin 10 %". */
 export function compositionWords(parts: Record<string, number | [number, number]>): string {
-  return Object.entries(parts)
+  const words = Object.entries(parts)
     .map(([symbol, share]) => `${elementName(symbol)} ${Array.isArray(share) ? share.join('–') : share} %`)
     .join(', ');
+  return words.charAt(0).toUpperCase() + words.slice(1);
 }

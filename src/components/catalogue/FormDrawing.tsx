@@ -63,7 +63,7 @@ export function FormDrawing(props: FormDrawingProps) {
       {plate.marks.map((mark, i) => (
         <path key={i} className={`plate-${mark.role}`} d={mark.d} />
       ))}
-      <ScaleBar bar={plate.bar} lettering={Math.max(plate.widthMm, plate.heightMm) / 46} />
+      <ScaleBar bar={plate.bar} lettering={Math.max(plate.widthMm, plate.heightMm) / 54} />
     </svg>
   );
 }
