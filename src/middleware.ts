@@ -66,10 +66,14 @@ async function turnBack(context: APIContext): Promise<Response | undefined> {
   if (verdict === 'open') return undefined;
   const { problem } =
     verdict === 'sign-in-needed'
-      ? refuse('sign-in-needed', 'You are not signed in, or no longer. Sign in; what you typed is kept.')
+      ? refuse(
+          'sign-in-needed',
+          'You were not signed in when this was sent, so it was not carried out. What you typed is kept: sign in, then send it again.',
+        )
       : refuse('not-allowed', 'Your role at the studio does not include this.');
   const isDoor = context.routePattern.startsWith('/api/');
-  if (isDoor) return readsPages(context.request) ? turnBackForm(context, problem) : jsonProblem(problem);
+  const isForm = context.request.method === 'POST' && readsPages(context.request);
+  if (isDoor) return isForm ? turnBackForm(context, problem) : jsonProblem(problem);
   if (problem.code === 'not-allowed') {
     context.locals.turnedAway = problem;
     return context.rewrite('/403');
@@ -87,9 +91,9 @@ async function turnBackForm(context: APIContext, problem: Problem): Promise<Resp
 
 function pageBefore({ request, url }: APIContext): string {
   const referer = request.headers.get('referer') ?? '';
-  if (!URL.canParse(referer)) return '/';
-  const from = new URL(referer);
-  return (from.origin === url.origin && safeNext(`${from.pathname}${from.search}`)) || '/';
+  const from = URL.canParse(referer) ? new URL(referer) : undefined;
+  const isOurs = from?.origin === url.origin && from.pathname !== '/';
+  return isOurs ? safeNext(`${from.pathname}${from.search}`) : '/sign-in';
 }
 
 function brokenProblem(fault: string): Problem {

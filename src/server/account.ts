@@ -35,7 +35,10 @@ export interface Account {
   sessions: number;
 }
 
-const NOT_SIGNED_IN = refuse('sign-in-needed', 'You are not signed in, or no longer. Sign in; what you typed is kept.');
+const NOT_SIGNED_IN = refuse(
+  'sign-in-needed',
+  'You were not signed in when this was sent, so it was not carried out. What you typed is kept: sign in, then send it again.',
+);
 
 /** Reads the actor's own account. */
 export async function readAccount({ db }: Services, actor: Actor): Promise<Outcome<Account>> {

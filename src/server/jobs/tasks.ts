@@ -2,6 +2,7 @@ import { z } from 'zod';
 import { sendMail } from '../mail/send';
 import { reconcileCheckouts } from '../reconcile';
 import type { Services } from '../services';
+import { sweepSignIns } from '../sign-in-sweep';
 import { lapseDeposits, lapseQuotes, requeueMails } from './clock';
 
 /** Work done outside a request. `payload` is what `queueJob` was given, unchecked. */
@@ -16,6 +17,7 @@ export const TASKS: Record<string, Job> = {
   'lapse-deposits': async (services) => report(services, 'first payments looked at', await lapseDeposits(services)),
   'requeue-mails': async (services) => report(services, 'waiting mails queued again', await requeueMails(services)),
   reconcile: async (services) => report(services, 'payments taken in late', await reconcileCheckouts(services)),
+  'sweep-sign-ins': async (services) => report(services, 'rows of past sign-ins deleted', await sweepSignIns(services)),
 };
 
 /** Tasks that look at the clock: they run at each start and then as written here (minute hour day month weekday, UTC). */
@@ -24,6 +26,7 @@ export const CLOCK_TASKS: Record<string, string> = {
   'lapse-deposits': '17 * * * *',
   'requeue-mails': '*/10 * * * *',
   reconcile: '*/5 * * * *',
+  'sweep-sign-ins': '27 * * * *',
 };
 
 function report({ log }: Services, what: string, count: number): void {
