@@ -1,5 +1,6 @@
 import { z } from 'zod';
 import { pricedFormSchema } from './form';
+import { tick } from './input-fields';
 import { currencySchema } from './money';
 import { studioRatesSchema } from './rates';
 
@@ -17,12 +18,6 @@ function millimetres(least: number, most: number, what: string) {
   const sentence = `${what} must be a number from ${least} to ${most} mm.`;
   return numberField(z.number(sentence).min(least, sentence).max(most, sentence)).optional();
 }
-
-/** A tick box: 'on', 'true', '1' or true is ticked, everything else is not. */
-const tick = z.preprocess(
-  (value) => value === true || value === 'on' || value === 'true' || value === '1',
-  z.boolean(),
-);
 
 const emptyIsNone = (value: unknown) => (value === '' || value === null ? undefined : value);
 const optionalCode = z.preprocess(emptyIsNone, z.string().max(60).optional());
@@ -48,8 +43,8 @@ export const estimateRequestSchema = z
     volumeMm3: numberField(z.number(VOLUME).min(500, VOLUME).max(1_000_000, VOLUME)).optional(),
     longestMm: millimetres(10, 1000, 'The longest dimension'),
     thinnestMm: millimetres(0.5, 200, 'The thinnest section'),
-    cored: tick.default(false),
-    bladed: tick.default(false),
+    cored: tick,
+    bladed: tick,
     texture: z.enum(['plain', 'worked', 'ornate']).default('plain'),
     alloy: optionalCode,
     lengthMm: millimetres(10, 1000, 'The length'),
@@ -60,7 +55,7 @@ export const estimateRequestSchema = z
     edge: optionalCode,
     haft: optionalCode,
     pieces: numberField(z.number(PIECES).int(PIECES).min(1, PIECES).max(24, PIECES)).default(1),
-    rush: tick.default(false),
+    rush: tick,
     destination: z
       .string()
       .trim()

@@ -1,4 +1,5 @@
 import { z } from 'zod';
+import { tick } from './input-fields';
 import { PIECE_STAGES, SCRAP_CAUSES, type ScrapCause } from './making';
 
 const clientId = z
@@ -59,7 +60,7 @@ export const timerSchema = z.object({ action: z.enum(['start', 'stop']), operati
 export const dispatchSchema = z.object({
   carrier: z.string().trim().min(2, 'Name the carrier.').max(80),
   tracking: z.string().trim().min(3, 'Give the tracking number.').max(80),
-  adultSignature: z.preprocess((value) => value === true || value === 'on' || value === 'true', z.boolean()),
+  adultSignature: tick,
   parcel: z.string().trim().min(3, 'Say what the parcel looks like, without saying what is in it.').max(200),
   duties: z.string().trim().max(500).optional(),
 });
