@@ -8,7 +8,7 @@ import { guard, isCanonicalPath } from './server/auth/guards';
 import { safeNext } from './server/auth/next-path';
 import { readSession } from './server/auth/session';
 import { answer, json, jsonProblem, readInput, wantsJson } from './server/door';
-import { noteFault } from './server/faults';
+import { NotedFault, noteFault } from './server/faults';
 import { sharedServices, type Services } from './server/services';
 import { signInPath } from './server/turn-away';
 
@@ -33,7 +33,7 @@ export const onRequest = defineMiddleware(async (context, next) => {
     return uncached(response, context.locals.user);
   } catch (error) {
     const fault = noteFault(services.log, error, `${context.request.method} ${context.routePattern}`);
-    if (readsPages(context.request)) throw error;
+    if (readsPages(context.request)) throw new NotedFault(fault);
     return json({ ok: false, problem: brokenProblem(fault) }, 500);
   }
 });

@@ -3,18 +3,21 @@ import type { Logger } from 'pino';
 
 /** Without letters and figures that are read as one another. */
 const newFaultId = customAlphabet('23456789ABCDEFGHJKMNPQRSTUVWXYZ', 8);
-const NOTED = new WeakMap<Error, string>();
 
-/**
- * Logs a fault of ours once and returns the id it is logged under, which the visitor is shown as well.
- * The same error gives the same id again.
- */
+/** A fault that is logged already. It may be printed anywhere: it says nothing but its id. */
+export class NotedFault extends Error {
+  override readonly name = 'NotedFault';
+
+  constructor(readonly fault: string) {
+    super(`fault ${fault}, logged above`);
+  }
+}
+
+/** Logs a fault of ours and returns the id it is logged under, which the visitor is shown as well. */
 export function noteFault(log: Logger, thrown: unknown, where: string): string {
+  if (thrown instanceof NotedFault) return thrown.fault;
   const error = thrown instanceof Error ? thrown : new Error(String(thrown));
-  const known = NOTED.get(error);
-  if (known) return known;
   const fault = newFaultId();
-  NOTED.set(error, fault);
   log.error({ err: error, fault, where }, 'a request failed');
   return fault;
 }
