@@ -1,6 +1,6 @@
 import { readdirSync, readFileSync } from 'node:fs';
 import { describe, expect, it } from 'vitest';
-import { lengthWords, massWords } from '../../src/casting/measures';
+import { lengthWords, massWords } from '../../src/casting/reader-units';
 import { studioAlloy } from '../../src/casting/studio-alloys';
 import { formSchema } from '../../src/commission/form';
 import { byPeriod, periodOf } from '../../src/components/catalogue/periods';

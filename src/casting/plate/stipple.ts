@@ -60,16 +60,18 @@ export function stipple(body: Sweep, sections: Drawing['sections'], light: Light
   const width = widest(slices);
   const [from, to] = [slices[0]!.at, slices[slices.length - 1]!.at];
   const dots: Point[] = [];
-  let i = 0;
   for (let k = 0; k < tries; k += 1) {
     const [a, b] = scatter(k);
     const at = from + a * (to - from);
-    i = slices.findIndex((slice) => slice.at >= at);
-    const { place, profile } = slices[Math.max(0, i)]!;
+    const i = Math.max(
+      0,
+      slices.findIndex((slice) => slice.at >= at),
+    );
+    const { place, profile } = slices[i]!;
     const across = (b - 0.5) * width;
     const half = across < 0 ? profile.right : profile.left;
     const s = half > 0 ? across / half : 2;
-    if (Math.abs(s) > 0.97 || mixed(k, 3) > darkness(slices, Math.max(0, i), s, sections, light)) continue;
+    if (Math.abs(s) > 0.97 || mixed(k, 3) > darkness(slices, i, s, sections, light)) continue;
     dots.push([place.x + place.nx * across, place.y + place.ny * across]);
   }
   return dots;

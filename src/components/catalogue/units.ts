@@ -1,4 +1,4 @@
-import { lengthWords, massWords, type UnitSystem } from '../../casting/measures';
+import { lengthWords, massWords, type UnitSystem } from '../../casting/reader-units';
 
 const KEY = 'units';
 
