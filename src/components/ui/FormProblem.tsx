@@ -12,14 +12,16 @@ export interface FormProblemProps {
 export function FormProblem({ problem, ids = {} }: FormProblemProps) {
   if (!problem) return null;
   const fields = Object.entries(problem.fields ?? {});
+  const link = (name: string, sentence: string) => <a href={`#${ids[name] ?? name}`}>{sentence}</a>;
+  // The one field's sentence is often the whole message: then it is said once.
+  const [only] = fields.length === 1 && fields[0]?.[1] === problem.message ? fields : [];
+  if (only) return <Notice kind="problem" title={link(...only)} />;
   return (
     <Notice kind="problem" title={problem.message}>
       {fields.length > 0 && (
         <ul className="mt-1">
           {fields.map(([name, sentence]) => (
-            <li key={name}>
-              <a href={`#${ids[name] ?? name}`}>{sentence}</a>
-            </li>
+            <li key={name}>{link(name, sentence)}</li>
           ))}
         </ul>
       )}
