@@ -1,6 +1,6 @@
 import { estimate } from '../commission/estimate';
 import { estimateRequestSchema } from '../commission/estimate-request';
-import { share, type Currency } from '../commission/money';
+import { formatMoney, share, type Currency } from '../commission/money';
 import { currentRateCard } from './rates';
 import type { Services } from './services';
 
@@ -8,8 +8,8 @@ import type { Services } from './services';
 export interface FromPrices {
   currency: Currency;
   ratesVersion: string;
-  /** By slug: the price of the work alone, no carriage, without and with the studio's tax. */
-  forms: Record<string, { fromMinor: number; fromWithTaxMinor: number }>;
+  /** By slug: the price of the work alone, no carriage, without and with the studio's tax; also in words. */
+  forms: Record<string, { fromMinor: number; fromWithTaxMinor: number; words: string; wordsWithTax: string }>;
   /** The studio's own settings for its alloys: density in g/cm3, contraction and melt loss as fractions. */
   alloys: { code: string; densityGPerCm3: number; contraction: number; meltLoss: number }[];
 }
@@ -22,7 +22,9 @@ export async function fromPrices(services: Services): Promise<FromPrices> {
     const found = estimate(estimateRequestSchema.parse({ what: 'form', form: slug }), card);
     if (!found.ok) continue;
     const { fromMinor } = found.value;
-    forms[slug] = { fromMinor, fromWithTaxMinor: fromMinor + share(fromMinor, card.rates.vatRate) };
+    const fromWithTaxMinor = fromMinor + share(fromMinor, card.rates.vatRate);
+    const words = (minor: number) => formatMoney(minor, card.rates.currency, { pence: 'whole' });
+    forms[slug] = { fromMinor, fromWithTaxMinor, words: words(fromMinor), wordsWithTax: words(fromWithTaxMinor) };
   }
   return {
     currency: card.rates.currency,

@@ -1,33 +1,29 @@
-import { z } from 'zod';
-import { currencySchema, formatMoney } from '../../commission/money';
+/** The part of `/api/rates/from-prices` these pages show. Money comes in words, so that the page loads no more than this. */
+interface Answer {
+  forms: Record<string, { words: string; wordsWithTax: string } | undefined>;
+  alloys: { code: string; densityGPerCm3: number; contraction: number; meltLoss: number }[];
+}
 
-const answerSchema = z.object({
-  currency: currencySchema,
-  forms: z.record(z.string(), z.object({ fromMinor: z.number().int(), fromWithTaxMinor: z.number().int() })),
-  alloys: z.array(
-    z.object({ code: z.string(), densityGPerCm3: z.number(), contraction: z.number(), meltLoss: z.number() }),
-  ),
-});
-type Answer = z.infer<typeof answerSchema>;
+function isAnswer(value: unknown): value is Answer {
+  if (typeof value !== 'object' || value === null || !('forms' in value) || !('alloys' in value)) return false;
+  return typeof value.forms === 'object' && value.forms !== null && Array.isArray(value.alloys);
+}
 
 /** Today's from-prices and alloy settings, or null when they cannot be had: the page then keeps its own words. */
 async function fetchFromPrices(): Promise<Answer | null> {
   try {
     const response = await fetch('/api/rates/from-prices', { headers: { accept: 'application/json' } });
-    if (!response.ok) return null;
-    const parsed = answerSchema.safeParse(await response.json());
-    return parsed.success ? parsed.data : null;
+    const answer: unknown = response.ok ? await response.json() : null;
+    return isAnswer(answer) ? answer : null;
   } catch {
     return null;
   }
 }
 
-const whole = (minor: number, answer: Answer) => formatMoney(minor, answer.currency, { pence: 'whole' });
-
 function fillForm(element: HTMLElement, answer: Answer) {
   const form = answer.forms[element.dataset.fromPrice ?? ''];
   const words = element.querySelector('[data-words]');
-  if (form && words) words.textContent = `From ${whole(form.fromWithTaxMinor, answer)} with VAT`;
+  if (form && words) words.textContent = `From ${form.wordsWithTax} with VAT`;
 }
 
 function fillPanel(panel: HTMLElement, answer: Answer) {
@@ -35,8 +31,8 @@ function fillPanel(panel: HTMLElement, answer: Answer) {
   const figure = panel.querySelector('[data-figure]');
   const before = panel.querySelector('[data-before]');
   if (!form || !figure || !before) return;
-  figure.textContent = whole(form.fromWithTaxMinor, answer);
-  before.textContent = `with VAT (${whole(form.fromMinor, answer)} before), carriage apart`;
+  figure.textContent = form.wordsWithTax;
+  before.textContent = `with VAT (${form.words} before), carriage apart`;
   for (const part of panel.querySelectorAll<HTMLElement>('[data-until]')) part.hidden = true;
   for (const part of panel.querySelectorAll<HTMLElement>('[data-when]')) part.hidden = false;
 }
