@@ -2,7 +2,7 @@ import { z } from 'zod';
 import { pricedFormSchema } from './form';
 import { tick } from './input-fields';
 import { currencySchema } from './money';
-import { studioRatesSchema } from './rates';
+import { estimateRatesSchema } from './rates';
 
 /** A number as a form sends it: text with a point or comma, or a number; empty is not given. */
 function numberField(schema: z.ZodNumber) {
@@ -81,5 +81,5 @@ export type EstimateRequest = z.output<typeof estimateRequestSchema>;
 export type EstimateRequestInput = z.input<typeof estimateRequestSchema>;
 
 /** What the estimate is reckoned from: the studio's rates and the priced part of its forms. Served as JSON to the page. */
-export const rateCardSchema = z.object({ rates: studioRatesSchema, forms: z.array(pricedFormSchema) });
+export const rateCardSchema = z.object({ rates: estimateRatesSchema, forms: z.array(pricedFormSchema) });
 export type RateCard = z.infer<typeof rateCardSchema>;

@@ -2,7 +2,7 @@ import type { Subject } from './estimate-draft';
 import type { EstimateRequest } from './estimate-request';
 import type { PricedQuote } from './pricing-results';
 import type { QuoteDraft } from './quote-draft';
-import type { StudioRates } from './rates';
+import type { EstimateRates } from './rates';
 import { sizeRatios } from './scaling';
 
 /** A chance as people say it: 0.29 is "about 3 times in 10", 0.04 "about once in 25". */
@@ -22,7 +22,7 @@ export function assumptionsOf(
   subject: Subject,
   draft: QuoteDraft,
   priced: PricedQuote,
-  rates: StudioRates,
+  rates: EstimateRates,
 ): string[] {
   const { massesG, metal, massTolerance, soundness, lines } = draft;
   const pattern =
@@ -58,7 +58,7 @@ export function risksOf(
   subject: Subject,
   draft: QuoteDraft,
   priced: PricedQuote,
-  rates: StudioRates,
+  rates: EstimateRates,
 ): string[] {
   const { repourWeeks } = rates.throughput;
   const risks: string[] = [];

@@ -2,7 +2,7 @@ import type { Subject } from './estimate-draft';
 import type { EstimateRequest } from './estimate-request';
 import { chosenHaft, findRoute } from './form-lines';
 import type { Estimate, Lever } from './pricing-results';
-import type { StudioRates } from './rates';
+import type { EstimateRates } from './rates';
 import { sizeRatios } from './scaling';
 
 /** Price of the work for a changed request in the quoted currency, or null when it cannot be made. */
@@ -15,7 +15,7 @@ interface Idea {
 }
 
 /** Cheaper routes of one kind, one idea each. */
-function routeIdeas(kind: 'finish' | 'edge', routes: StudioRates['finishes'], current: string | undefined): Idea[] {
+function routeIdeas(kind: 'finish' | 'edge', routes: EstimateRates['finishes'], current: string | undefined): Idea[] {
   const own = findRoute(routes, current);
   return routes
     .filter((route) => own && route.factor < own.factor)
@@ -23,7 +23,7 @@ function routeIdeas(kind: 'finish' | 'edge', routes: StudioRates['finishes'], cu
 }
 
 /** Changes worth trying, whether or not they turn out cheaper. */
-function ideasFor(request: EstimateRequest, { form }: Subject, rates: StudioRates): Idea[] {
+function ideasFor(request: EstimateRequest, { form }: Subject, rates: EstimateRates): Idea[] {
   const edged = form ? form.intendedEdges.length > 0 : request.bladed;
   const offered = form
     ? rates.edges.filter(({ code }) => form.intendedEdges.some((edge) => edge === code))
@@ -64,7 +64,7 @@ function changeFields(change: Partial<EstimateRequest>): Lever['change'] {
 export function cheaperLevers(
   request: EstimateRequest,
   subject: Subject,
-  rates: StudioRates,
+  rates: EstimateRates,
   workMinor: number,
   reprice: Reprice,
 ): Lever[] {
@@ -88,7 +88,7 @@ export function cheaperLevers(
 /** What every other alloy offered would add or save. */
 export function alloyDifferences(
   { form, alloy }: Subject,
-  rates: StudioRates,
+  rates: EstimateRates,
   workMinor: number,
   reprice: Reprice,
 ): Estimate['alloys'] {

@@ -199,6 +199,10 @@ export const studioRatesSchema = z.object({
 });
 export type StudioRates = z.infer<typeof studioRatesSchema>;
 
+/** What an estimate is reckoned from: all of the studio's rates but its furnaces. */
+export const estimateRatesSchema = studioRatesSchema.omit({ pourDay: true });
+export type EstimateRates = z.infer<typeof estimateRatesSchema>;
+
 /** Cost of one heat in minor units: fuel, crucible wear, sundries and the crew's time at the bench rate. */
 export function heatMinor(rates: Pick<StudioRates, 'heat' | 'benchRateMinorPerHour'>): number {
   const { fuelMinor, crucibleWearMinor, sundriesMinor, crew, crewMinutes } = rates.heat;

@@ -3,6 +3,7 @@ import { uuidv7 } from 'uuidv7';
 import type { z } from 'zod';
 import type { Actor } from '../commission/permissions';
 import { done, refuse, type Outcome, type Problem, type ProblemCode } from '../commission/problem';
+import { problemFrom } from '../commission/problem-from';
 import { formReturns } from './db/schema/people';
 import type { Services } from './services';
 
@@ -77,19 +78,6 @@ function fromForm(form: FormData): Record<string, unknown> {
     if (name.endsWith('[]')) values[name.slice(0, -2)] = all;
   }
   return values;
-}
-
-/** Turns a schema's complaints into one problem, a sentence per field. */
-export function problemFrom(error: z.ZodError): Problem {
-  const fields: Record<string, string> = {};
-  for (const issue of error.issues) {
-    const name = issue.path.join('.') || 'form';
-    fields[name] ??= issue.message;
-  }
-  const count = Object.keys(fields).length;
-  const message =
-    count === 1 ? Object.values(fields)[0]! : `${count} entries need another look. Each says why beside it.`;
-  return { code: 'invalid', message, fields };
 }
 
 /** Where an answer leads a plain form: on success, and back after a refusal. */
