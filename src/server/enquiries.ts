@@ -44,10 +44,10 @@ export async function sendEnquiry(
     return refuse('not-allowed', 'Enquiries come from customers, or from an owner on their behalf.');
   const known = await knownEnquiry(services.db, actor, sender, input.clientId);
   if (known) return known;
-  const allowed = await limit(services, 'enquiry', sender.client);
-  if (!allowed.ok) return allowed;
   const checked = await checkEnquiry(services, actor, input);
   if (!checked.ok) return checked;
+  const allowed = await limit(services, 'enquiry', sender.client);
+  if (!allowed.ok) return allowed;
   const mayMail = actor ? done(null) : await limit(services, 'link-address', checked.value.email);
   if (!mayMail.ok) return mayMail;
   return services.db.transaction(async (tx) => {
