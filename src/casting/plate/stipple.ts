@@ -1,7 +1,7 @@
 import type { Drawing } from '../drawing';
 import { blendedHeight, type Point } from './section';
 import type { Profile } from './profile';
-import { slicesOf, type Slice, type Sweep } from './sweep';
+import { lineStretch, slicesOf, type Slice, type Sweep } from './sweep';
 
 /** Light on an excavation plate falls from the upper left. Unit vector in [along, across, towards the reader]. */
 export type Light = [number, number, number];
@@ -59,6 +59,7 @@ export function stipple(body: Sweep, sections: Drawing['sections'], light: Light
   const slices = slicesOf(body, 120);
   const width = widest(slices);
   const [from, to] = [slices[0]!.at, slices[slices.length - 1]!.at];
+  const stretch = lineStretch(body);
   const dots: Point[] = [];
   for (let k = 0; k < tries; k += 1) {
     const [a, b] = scatter(k);
@@ -72,7 +73,8 @@ export function stipple(body: Sweep, sections: Drawing['sections'], light: Light
     const half = across < 0 ? profile.right : profile.left;
     const s = half > 0 ? across / half : 2;
     if (Math.abs(s) > 0.97 || mixed(k, 3) > darkness(slices, i, s, sections, light)) continue;
-    dots.push([place.x + place.nx * across, place.y + place.ny * across]);
+    const ahead = (at - slices[i]!.at) * stretch;
+    dots.push([place.x + place.ny * ahead + place.nx * across, place.y - place.nx * ahead + place.ny * across]);
   }
   return dots;
 }
