@@ -1,4 +1,5 @@
 import { asc, eq } from 'drizzle-orm';
+import { uuidv7 } from 'uuidv7';
 import { suggestQuestions, type EnquiryFacts } from '../commission/checklist';
 import { neededByWords, requestOf, type Enquiry } from '../commission/enquiry';
 import { DESIGN_SOURCES, INTENDED_USES } from '../commission/enquiry-choices';
@@ -83,13 +84,13 @@ export async function queueStudioMail(
   at: Date,
 ): Promise<void> {
   const files = await readUploads(tx, commission.id);
-  const when = kind === 'answers' ? `:${at.toISOString()}` : '';
+  const time = kind === 'answers' ? `:${uuidv7()}` : '';
   const missing = suggestQuestions(factsOf(commission, files)).map((suggestion) => suggestion.text);
   for (const owner of await ownerAddresses(tx)) {
     await queueMail(tx, {
       letter: 'M2',
       to: owner.email,
-      cause: `M2:${commission.id}:${kind}${when}:${owner.email}`,
+      cause: `M2:${commission.id}:${kind}${time}:${owner.email}`,
       commissionId: commission.id,
       at,
       data: {

@@ -1,10 +1,11 @@
+import { eq } from 'drizzle-orm';
+import { uuidv7 } from 'uuidv7';
 import { canonicalJson } from '../commission/canonical-json';
 import { currencySchema, formatMoney, share } from '../commission/money';
 import type { Actor } from '../commission/permissions';
 import type { Estimate } from '../commission/pricing-results';
 import { done, type Outcome } from '../commission/problem';
 import { DECLINE_REASONS, type Decline, type OwnerEstimate, type SendEstimate } from '../commission/triage';
-import { eq } from 'drizzle-orm';
 import { findCommission, lockCommission, type CommissionRow } from './commissions';
 import type { Transaction } from './db/client';
 import { commissions } from './db/schema/commissions';
@@ -117,7 +118,7 @@ async function queueEstimateMail(
   await queueMail(tx, {
     letter: 'M6',
     to: commission.email,
-    cause: `M6:${commission.id}:${range.sentAt}`,
+    cause: `M6:${uuidv7()}`,
     commissionId: commission.id,
     at,
     data: {

@@ -78,7 +78,8 @@ export function enquiry(changes: Partial<Record<keyof EnquiryInput | string, unk
 
 /** A commission of the setting's customer that is an enquiry; its ref. */
 export async function newEnquiry({ services, customer }: Setting, changes: Record<string, unknown> = {}) {
-  const sent = await sendEnquiry(services, customer, SENDER, enquiry(changes));
+  const input = enquiry(changes);
+  const sent = await sendEnquiry(services, customer, { ...SENDER, client: `test of ${input.clientId}` }, input);
   if (!sent.ok) throw new Error(sent.problem.message);
   return sent.value.ref;
 }
