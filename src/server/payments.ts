@@ -10,6 +10,7 @@ import { moveDeal, recordEvent } from './history';
 import { bookEntry, readBalance, type LedgerEntry } from './ledger';
 import { queueReceiptMail } from './payment-mails';
 import { openPieces } from './pieces';
+import { writePromise } from './promise';
 import type { Services } from './services';
 
 /** What became of an event; kept beside its id. */
@@ -264,5 +265,6 @@ export async function welcomePayment(
     });
     await openPieces(tx, commission.id, at);
   }
-  await queueReceiptMail(services, tx, commission, entry);
+  const promised = commission.deal === 'agreed' ? await writePromise(tx, commission, at) : commission;
+  await queueReceiptMail(services, tx, promised, entry);
 }

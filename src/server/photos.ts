@@ -91,13 +91,15 @@ export async function putSizes(folder: string, made: Record<PhotoSize, MadePictu
   return files;
 }
 
-interface NewPhoto {
+/** A photo made ready: what comes with it, the hash of the file as sent, and its three stored sizes. */
+export interface NewPhoto {
   fields: PhotoFields;
   sha256: string;
   files: PhotoRow['files'];
 }
 
-async function storePhoto(
+/** Writes a photo whose sizes are stored and tells the commission's page; the demo's photos come in here. */
+export async function storePhoto(
   services: Services,
   actor: Actor,
   commissionId: string,

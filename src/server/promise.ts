@@ -1,8 +1,10 @@
 import { and, eq } from 'drizzle-orm';
 import { quoteDraftSchema } from '../commission/quote-draft';
 import type { CommissionRow } from './commissions';
-import type { Db } from './db/client';
+import type { Db, Transaction } from './db/client';
+import { commissions } from './db/schema/commissions';
 import { quotes } from './db/schema/quotes';
+import { leavesBetween } from './promised-days';
 
 /** The accepted quote's draft, as frozen; null before acceptance. */
 export async function acceptedDraft(db: Db, commissionId: string) {
@@ -11,6 +13,16 @@ export async function acceptedDraft(db: Db, commissionId: string) {
     .from(quotes)
     .where(and(eq(quotes.commissionId, commissionId), eq(quotes.state, 'accepted')));
   return row ? quoteDraftSchema.parse((row.body as { draft: unknown }).draft) : null;
+}
+
+/** The accepted quote's weeks, counted from the first payment, become the days between which the piece leaves (T12). */
+export async function writePromise(tx: Transaction, commission: CommissionRow, from: Date): Promise<CommissionRow> {
+  const draft = await acceptedDraft(tx, commission.id);
+  if (!draft) return commission;
+  const leaves = leavesBetween(from, draft.dateRange);
+  const promise = { leavesFrom: leaves.from, leavesTo: leaves.to };
+  await tx.update(commissions).set(promise).where(eq(commissions.id, commission.id));
+  return { ...commission, ...promise };
 }
 
 /** The facts a customer confirms before work starts: what it is, alloy, mass, finish, and where it goes. */
