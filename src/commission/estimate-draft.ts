@@ -11,7 +11,7 @@ import { ownFamilyCode, ownLines, ownMasses } from './own-piece';
 import { done, type Outcome, refuse } from './problem';
 import { priceQuote } from './quote';
 import type { QuoteDraft, Rush } from './quote-draft';
-import { type AlloyRate, type Family, findAlloy, findFamily, heatMinor, type StudioRates } from './rates';
+import { type AlloyRate, type Family, findAlloy, findFamily, heatMinor, type EstimateRates } from './rates';
 import { sizeRatios } from './scaling';
 import { failureChance, soundnessOf } from './soundness';
 
@@ -30,7 +30,7 @@ function refuseField(field: string, message: string) {
   return refuse('invalid', message, { [field]: message });
 }
 
-function formMasses(form: PricedForm, alloy: AlloyRate, request: EstimateRequest, rates: StudioRates): Masses {
+function formMasses(form: PricedForm, alloy: AlloyRate, request: EstimateRequest, rates: EstimateRates): Masses {
   const own = findAlloy(rates, form.alloy) ?? alloy;
   const ratio = sizeRatios(form, request).mass * (alloy.densityGPerCm3 / own.densityGPerCm3);
   const of = (massG: number) => Math.max(1, halfUp(massG * ratio));
@@ -110,7 +110,7 @@ export function findSubject(request: EstimateRequest, card: RateCard): Outcome<S
 }
 
 /** What the buyer gets, one sentence each. */
-function specification(request: EstimateRequest, { form, alloy }: Subject, rates: StudioRates): string[] {
+function specification(request: EstimateRequest, { form, alloy }: Subject, rates: EstimateRates): string[] {
   const finish = findRoute(rates.finishes, request.finish ?? form?.work.finish ?? 'polished');
   const edged = form ? form.intendedEdges.length > 0 : request.bladed;
   const edge = edged ? findRoute(rates.edges, request.edge ?? form?.work.edge ?? rates.edges[0]?.code) : undefined;
@@ -125,7 +125,7 @@ function specification(request: EstimateRequest, { form, alloy }: Subject, rates
 function weeksFor(
   lines: readonly CostLine[],
   pieces: number,
-  rates: StudioRates,
+  rates: EstimateRates,
   chanceOfRepour: number,
   rush: boolean,
 ) {
@@ -138,7 +138,7 @@ function weeksFor(
   return dateRange(throughput, hand.minutes / 60, chanceOfRepour);
 }
 
-function rushFor(request: EstimateRequest, massesG: Masses, rates: StudioRates): Rush | null {
+function rushFor(request: EstimateRequest, massesG: Masses, rates: EstimateRates): Rush | null {
   if (!request.rush) return null;
   return {
     heatMinor: heatMinor(rates),
@@ -147,7 +147,7 @@ function rushFor(request: EstimateRequest, massesG: Masses, rates: StudioRates):
 }
 
 /** The draft before carriage is known, which depends on what the parcel is worth. */
-function draftWithoutCarriage(request: EstimateRequest, subject: Subject, rates: StudioRates): QuoteDraft {
+function draftWithoutCarriage(request: EstimateRequest, subject: Subject, rates: EstimateRates): QuoteDraft {
   const { form, alloy, family, massesG } = subject;
   const metal = {
     code: alloy.code,
@@ -156,7 +156,7 @@ function draftWithoutCarriage(request: EstimateRequest, subject: Subject, rates:
     returnsMinorPerKg: alloy.returnsMinorPerKg,
     meltLoss: alloy.meltLoss,
   };
-  const work = form ? formLines(form, request, rates) : ownLines(request, alloy, rates);
+  const work = form ? formLines(form, request, rates, alloy.contraction) : ownLines(request, alloy, rates);
   const lines = [...work, ...metalLines(massesG, metal, heatMinor(rates), rates.planningLoadG)];
   const belief = soundnessOf(family, rates.pricing.priorPours);
   const foreign = request.currency === rates.currency ? undefined : rates.currencies[request.currency];
@@ -200,7 +200,7 @@ function draftWithoutCarriage(request: EstimateRequest, subject: Subject, rates:
 }
 
 /** A priceable draft from a request: every line at the studio's usual figures, carriage by what the priced work is worth. */
-export function draftForRequest(request: EstimateRequest, subject: Subject, rates: StudioRates): QuoteDraft {
+export function draftForRequest(request: EstimateRequest, subject: Subject, rates: EstimateRates): QuoteDraft {
   const draft = draftWithoutCarriage(request, subject, rates);
   const { workMinor } = priceQuote(draft);
   const haftG = chosenHaft(request, subject.form) ? (subject.form?.work.haftMassG ?? rates.ownPiece.haftMassG) : 0;

@@ -5,7 +5,7 @@ import { currencySchema } from './money';
 import { estimateRatesSchema } from './rates';
 
 /** A number as a form sends it: text with a point or comma, or a number; empty is not given. */
-function numberField(schema: z.ZodNumber) {
+function numberField<Schema extends z.ZodType>(schema: Schema) {
   return z.preprocess((value) => {
     if (value === null || value === undefined) return undefined;
     if (typeof value !== 'string') return value;
@@ -16,7 +16,7 @@ function numberField(schema: z.ZodNumber) {
 
 function millimetres(least: number, most: number, what: string) {
   const sentence = `${what} must be a number from ${least} to ${most} mm.`;
-  return numberField(z.number(sentence).min(least, sentence).max(most, sentence)).optional();
+  return numberField(z.number(sentence).min(least, sentence).max(most, sentence).optional());
 }
 
 const emptyIsNone = (value: unknown) => (value === '' || value === null ? undefined : value);
@@ -33,28 +33,28 @@ const VOLUME = 'The volume must be from 500 to 1,000,000 mm3. Is the file perhap
  */
 export const estimateRequestSchema = z
   .object({
-    what: z.enum(['form', 'own']).default('form'),
+    what: z.preprocess(emptyIsNone, z.enum(['form', 'own']).default('form')),
     form: optionalCode,
     description: z.preprocess(
       emptyIsNone,
       z.string().trim().max(500, 'Keep the description under 500 characters.').optional(),
     ),
-    massG: numberField(z.number(MASS).min(5, MASS).max(8000, MASS)).optional(),
-    volumeMm3: numberField(z.number(VOLUME).min(500, VOLUME).max(1_000_000, VOLUME)).optional(),
+    massG: numberField(z.number(MASS).min(5, MASS).max(8000, MASS).optional()),
+    volumeMm3: numberField(z.number(VOLUME).min(500, VOLUME).max(1_000_000, VOLUME).optional()),
     longestMm: millimetres(10, 1000, 'The longest dimension'),
     thinnestMm: millimetres(0.5, 200, 'The thinnest section'),
     cored: tick,
     bladed: tick,
-    texture: z.enum(['plain', 'worked', 'ornate']).default('plain'),
+    texture: z.preprocess(emptyIsNone, z.enum(['plain', 'worked', 'ornate']).default('plain')),
     alloy: optionalCode,
     lengthMm: millimetres(10, 1000, 'The length'),
     widthMm: millimetres(3, 400, 'The width'),
     thicknessMm: millimetres(1, 200, 'The thickness'),
     finish: optionalCode,
-    finishHours: numberField(z.number(HOURS).min(0, HOURS).max(400, HOURS)).optional(),
+    finishHours: numberField(z.number(HOURS).min(0, HOURS).max(400, HOURS).optional()),
     edge: optionalCode,
     haft: optionalCode,
-    pieces: numberField(z.number(PIECES).int(PIECES).min(1, PIECES).max(24, PIECES)).default(1),
+    pieces: numberField(z.number(PIECES).int(PIECES).min(1, PIECES).max(24, PIECES).default(1)),
     rush: tick,
     destination: z
       .string()
@@ -62,8 +62,8 @@ export const estimateRequestSchema = z
       .toUpperCase()
       .regex(/^[A-Z]{2}$/, 'Choose the country the piece goes to.')
       .default('GB'),
-    currency: currencySchema.default('GBP'),
-    buyer: z.enum(['consumer', 'institution']).default('consumer'),
+    currency: z.preprocess(emptyIsNone, currencySchema.default('GBP')),
+    buyer: z.preprocess(emptyIsNone, z.enum(['consumer', 'institution']).default('consumer')),
   })
   .superRefine((request, context) => {
     const need = (path: string, message: string) => context.addIssue({ code: 'custom', path: [path], message });

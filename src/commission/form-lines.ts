@@ -1,12 +1,13 @@
+import { patternScale } from '../casting/mass';
 import { type CostLine, costLine } from './cost-lines';
 import type { EstimateRequest } from './estimate-request';
 import type { PricedForm, WorkLine } from './form';
 import { halfUp } from './money';
-import type { StudioRates } from './rates';
+import type { EstimateRates } from './rates';
 import { lineScale, sizeRatios, type SizeRatios } from './scaling';
 
 /** A finish or edge by code; undefined when the studio does not offer it. */
-export function findRoute(routes: StudioRates['finishes'], code: string | undefined) {
+export function findRoute(routes: EstimateRates['finishes'], code: string | undefined) {
   return routes.find((route) => route.code === code);
 }
 
@@ -23,7 +24,7 @@ export function chosenHaft(request: Pick<EstimateRequest, 'haft'>, form: PricedF
 }
 
 /** Factor and added materials of the wanted finish or edge against the one the form was reckoned for. */
-function routeChange(line: WorkLine, form: PricedForm, request: EstimateRequest, rates: StudioRates) {
+function routeChange(line: WorkLine, form: PricedForm, request: EstimateRequest, rates: EstimateRates) {
   if (line.role !== 'finish' && line.role !== 'edge') return { factor: 1, extraMinor: 0 };
   const [routes, usual, wanted] =
     line.role === 'finish'
@@ -40,7 +41,7 @@ function drawnLine(
   ratios: SizeRatios,
   form: PricedForm,
   request: EstimateRequest,
-  rates: StudioRates,
+  rates: EstimateRates,
 ): CostLine {
   const scale = lineScale(line, ratios);
   const { factor, extraMinor } = routeChange(line, form, request, rates);
@@ -63,8 +64,16 @@ function drawnLine(
   });
 }
 
-/** Cost lines of a catalogue form as asked for; the metal lines are apart, because they come from the masses. */
-export function formLines(form: PricedForm, request: EstimateRequest, rates: StudioRates): CostLine[] {
+/**
+ * Cost lines of a catalogue form as asked for; the metal lines are apart, because they come from the
+ * masses. `contraction` is the alloy's, linear.
+ */
+export function formLines(
+  form: PricedForm,
+  request: EstimateRequest,
+  rates: EstimateRates,
+  contraction: number,
+): CostLine[] {
   const ratios = sizeRatios(form, request);
   const wanted = form.work.lines.filter((line) => line.role !== 'haft' || chosenHaft(request, form) !== null);
   const lines = wanted.map((line) => drawnLine(line, ratios, form, request, rates));
@@ -77,7 +86,7 @@ export function formLines(form: PricedForm, request: EstimateRequest, rates: Stu
     minutes: halfUp(minutes * ratios.area),
     rateMinorPerHour: rates.benchRateMinorPerHour,
     materialsMinor: halfUp(materialsMinor * ratios.area),
-    driver: 'the studio’s own pattern has another size',
+    driver: `made ${((patternScale(contraction) - 1) * 100).toFixed(1)} % over size for the metal’s contraction`,
   });
   return [pattern, ...lines];
 }

@@ -1,3 +1,4 @@
+import { beforeLoss } from '../casting/mass';
 import { type CostLine, costLine } from './cost-lines';
 import { halfUp } from './money';
 import type { QuoteMetal } from './quote-draft';
@@ -11,7 +12,7 @@ export interface Masses {
 
 /** Grams lost to dross and fume when `pouredG` reach the mould: poured / (1 - loss) - poured, to the gram. */
 export function meltLossG(pouredG: number, meltLoss: number): number {
-  return halfUp(pouredG / (1 - meltLoss) - pouredG);
+  return halfUp(beforeLoss(pouredG, meltLoss) - pouredG);
 }
 
 /** Metal bought for the first pour of every piece, minor units: poured mass plus melt loss at the ingot price. */

@@ -1,12 +1,13 @@
+import { massG, volumeMm3 } from '../casting/mass';
 import { type CostLine, costLine } from './cost-lines';
 import type { EstimateRequest } from './estimate-request';
 import { chosenHaft, findRoute, timeWords } from './form-lines';
 import type { Masses } from './metal-lines';
 import { halfUp } from './money';
-import type { AlloyRate, Family, StudioRates } from './rates';
+import type { AlloyRate, Family, EstimateRates } from './rates';
 
 /** Family of a piece without a form: its core first, then its ornament, then how thin and long it runs. */
-export function ownFamilyCode(request: EstimateRequest, rates: StudioRates): string {
+export function ownFamilyCode(request: EstimateRequest, rates: EstimateRates): string {
   const { thinSectionMm, longPieceMm } = rates.ownPiece;
   if (request.cored) return 'cored';
   if (request.texture === 'ornate') return 'ornate';
@@ -16,12 +17,12 @@ export function ownFamilyCode(request: EstimateRequest, rates: StudioRates): str
 
 /** Volume of the finished piece in mm3, measured or from its mass in g and the alloy's density in g/cm3. */
 export function ownVolumeMm3(request: EstimateRequest, alloy: Pick<AlloyRate, 'densityGPerCm3'>): number {
-  return request.volumeMm3 ?? ((request.massG ?? 0) / alloy.densityGPerCm3) * 1000;
+  return request.volumeMm3 ?? volumeMm3(request.massG ?? 0, alloy.densityGPerCm3);
 }
 
 /** Finished, cast and poured mass in g: the files take off the fettling allowance, the family's yield gives the gating. */
-export function ownMasses(request: EstimateRequest, alloy: AlloyRate, family: Family, rates: StudioRates): Masses {
-  const measured = (ownVolumeMm3(request, alloy) / 1000) * alloy.densityGPerCm3;
+export function ownMasses(request: EstimateRequest, alloy: AlloyRate, family: Family, rates: EstimateRates): Masses {
+  const measured = massG(ownVolumeMm3(request, alloy), alloy.densityGPerCm3);
   const finished = Math.max(1, halfUp(request.massG ?? measured));
   const cast = halfUp(finished * rates.ownPiece.fettlingAllowance);
   return { finished, cast, poured: halfUp(cast / family.castingYield) };
@@ -31,9 +32,9 @@ export function ownMasses(request: EstimateRequest, alloy: AlloyRate, family: Fa
  * Surface in dm2, estimated: a plate with mean thickness twice its thinnest section has volume / thinnest of it, and no
  * solid of that volume in a bar's or block's shape has much less than a cube. Studio's starting rule.
  */
-export function ownSurfaceDm2(volumeMm3: number, thinnestMm: number): number {
-  const cube = 6 * volumeMm3 ** (2 / 3);
-  return Math.min(Math.max(volumeMm3 / thinnestMm, cube), 6 * cube) / 10_000;
+export function ownSurfaceDm2(volume: number, thinnestMm: number): number {
+  const cube = 6 * volume ** (2 / 3);
+  return Math.min(Math.max(volume / thinnestMm, cube), 6 * cube) / 10_000;
 }
 
 interface Reckoning {
@@ -44,7 +45,7 @@ interface Reckoning {
 }
 
 function preparation(
-  { ownPiece: own }: StudioRates,
+  { ownPiece: own }: EstimateRates,
   { surface, texture, benchMinor, deskMinor }: Reckoning,
 ): CostLine[] {
   const desk = (id: string, label: string, minutes: number) =>
@@ -67,7 +68,7 @@ function preparation(
 }
 
 function attempt(
-  { ownPiece: own }: StudioRates,
+  { ownPiece: own }: EstimateRates,
   request: EstimateRequest,
   { surface, benchMinor }: Reckoning,
 ): CostLine[] {
@@ -90,7 +91,7 @@ function attempt(
 }
 
 function handwork(
-  rates: StudioRates,
+  rates: EstimateRates,
   request: EstimateRequest,
   { surface, texture, benchMinor }: Reckoning,
 ): CostLine[] {
@@ -133,7 +134,7 @@ function handwork(
 }
 
 /** Cost lines of a piece the studio has no form for, from its surface, texture and core; the metal lines are apart. */
-export function ownLines(request: EstimateRequest, alloy: AlloyRate, rates: StudioRates): CostLine[] {
+export function ownLines(request: EstimateRequest, alloy: AlloyRate, rates: EstimateRates): CostLine[] {
   const own = rates.ownPiece;
   const reckoning: Reckoning = {
     surface: ownSurfaceDm2(ownVolumeMm3(request, alloy), request.thinnestMm ?? own.thinSectionMm),

@@ -1,3 +1,4 @@
+import { beforeLoss } from '../casting/mass';
 import { ceilToStep } from './money';
 import type { AlloyRate, PourDayRates } from './rates';
 
@@ -7,7 +8,7 @@ export function chargeG(
   meltLoss: number,
   rates: Pick<PourDayRates, 'spillAllowance' | 'chargeStepG'>,
 ): number {
-  return ceilToStep((pouredG * rates.spillAllowance) / (1 - meltLoss), rates.chargeStepG);
+  return ceilToStep(beforeLoss(pouredG * rates.spillAllowance, meltLoss), rates.chargeStepG);
 }
 
 /** What goes into the crucible, g. */

@@ -74,6 +74,8 @@ export interface PricedQuote {
   /** P(F = k) for k = 0, 1, ... and the lumped tail last. */
   failureChances: number[];
   expectedFailures: number;
+  /** Chance that one pour is sound: the mean of the belief and its middle 90 %. */
+  soundPour: { mean: number; low: number; high: number };
   chanceOfRepour: number;
   cost: CostFigures;
   prices: { expectedMinor: number; breakEvenP80Minor: number; firmMinor: number; p80Minor: number; p95Minor: number };

@@ -12,7 +12,7 @@ import { pricesFor, shownRange } from './price';
 import type { PricedQuote } from './pricing-results';
 import type { QuoteDraft } from './quote-draft';
 import { quoteWarnings } from './quote-warnings';
-import { coveredFailures, expectedFailures, failureChances } from './soundness';
+import { coveredFailures, expectedFailures, failureChances, meanSoundness, soundnessInterval } from './soundness';
 import { planStages, stagePayments } from './stage-payments';
 import { sumDocument, taxedLine, taxRate } from './tax';
 
@@ -64,6 +64,7 @@ export function priceQuote(draft: QuoteDraft): PricedQuote {
     sums,
     failureChances: chances,
     expectedFailures: failures,
+    soundPour: { mean: meanSoundness(draft.soundness), ...soundnessInterval(draft.soundness, 0.9) },
     chanceOfRepour: 1 - (chances[0] ?? 1),
     cost,
     prices,

@@ -1,3 +1,4 @@
+import { betaQuantile } from './beta-quantile';
 import type { Family } from './rates';
 
 /** What the studio believes about one pour: Beta(alpha, beta), counted in sound and failed pours. */
@@ -28,6 +29,12 @@ export function afterPour(soundness: Soundness, result: 'sound' | 'scrapped'): S
 /** Mean chance that the next pour is sound. */
 export function meanSoundness({ alpha, beta }: Soundness): number {
   return alpha / (alpha + beta);
+}
+
+/** The middle `share` of the belief about one pour: how little a short history says. */
+export function soundnessInterval({ alpha, beta }: Soundness, share: number): { low: number; high: number } {
+  const tail = (1 - share) / 2;
+  return { low: betaQuantile(tail, alpha, beta), high: betaQuantile(1 - tail, alpha, beta) };
 }
 
 /**
