@@ -4,6 +4,9 @@ import type { Role } from '../../../src/commission/permissions';
 import { openSession } from '../../../src/server/auth/session';
 import { invitations, users } from '../../../src/server/db/schema/people';
 import { mails } from '../../../src/server/db/schema/studio';
+import { LETTER_DATA } from '../../../src/server/mail/letter-data';
+import { frameFor, renderLetter } from '../../../src/server/mail/render';
+import { readStudioFacts } from '../../../src/server/mail/studio-facts';
 import {
   changeRole,
   inviteSchema,
@@ -140,4 +143,14 @@ it('refuses somebody who was taken off the list only after the mail proved the a
   await setActive(services, owner, gone.id, { active: false });
   const mail = await askAndRead(services, 'gone@example.org');
   expect(await spendLink(services, mail)).toMatchObject({ ok: false, problem: { code: 'not-allowed' } });
+});
+
+it('tells the invited person who asked them, as what, and what to do once the link has run out', async () => {
+  await invitePerson(services, owner, juno);
+  const [row] = await services.db.select().from(mails);
+  const frame = frameFor(services.config, await readStudioFacts(services.db));
+  const rendered = await renderLetter('M0', LETTER_DATA.M0.parse(row!.data), frame);
+  expect(rendered.subject).toBe('Your invitation to Marrowfen Casting House');
+  expect(rendered.text).toContain('Wren Addlecombe has invited you to Marrowfen Casting House as maker.');
+  expect(rendered.text).toMatch(/the\s+invitation\s+stays/);
 });
