@@ -19,12 +19,13 @@ export function isTaken(port: number): Promise<boolean> {
  */
 export async function waitForPorts(ports: Record<string, number>, patience = 6_000): Promise<void> {
   const deadline = Date.now() + patience;
+  const base = Math.min(...Object.values(ports));
   for (const [purpose, port] of Object.entries(ports)) {
     while (await isTaken(port)) {
       if (Date.now() > deadline) {
         throw new LaunchProblem(
           `Port ${port}, needed for the ${purpose}, is used by another program. Stop that program, ` +
-            `or choose another base port: PORT=${port + 100} npm start`,
+            `or choose another base port: PORT=${base + 100} npm start`,
         );
       }
       await pause(150);

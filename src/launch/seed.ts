@@ -1,5 +1,5 @@
-import { existsSync } from 'node:fs';
 import { count } from 'drizzle-orm';
+import { seedDemo } from '../demo/seed';
 import type { Config } from '../server/config';
 import { users } from '../server/db/schema/people';
 import { closeServices, createServices } from '../server/services';
@@ -10,10 +10,7 @@ export async function seedWhenEmpty(config: Config, progress: (words: string) =>
   try {
     const [row] = await services.db.select({ people: count() }).from(users);
     if (row && row.people > 0) return progress('it is there');
-    if (!existsSync('src/demo/seed.ts')) return progress('there is none yet');
     progress('the database is empty, filling it');
-    const demo = '../demo/seed';
-    const { seedDemo } = await import(demo);
     await seedDemo(services);
   } finally {
     await closeServices(services);

@@ -1,6 +1,4 @@
-import { type ChildProcess } from 'node:child_process';
-import { existsSync, mkdirSync } from 'node:fs';
-import { join } from 'node:path';
+import type { ChildProcess } from 'node:child_process';
 import { readConfig, type Config } from '../server/config';
 import { startCluster } from './cluster';
 import { claimDataFolder } from './data-folder';
@@ -32,7 +30,6 @@ export async function openStudio(): Promise<Studio> {
   };
   const studio: Studio = { config: readConfig(), steps, children: [], close };
   try {
-    mkdirParents(studio.config);
     closers.push(claimDataFolder(studio.config.dataFolder));
     if (studio.config.demo) await openDatabase(studio, closers);
     await steps.run('Bringing the tables up to date', () => migrateDatabase(studio.config.databaseUrl, 'drizzle'));
@@ -45,10 +42,6 @@ export async function openStudio(): Promise<Studio> {
     await close();
     throw error;
   }
-}
-
-function mkdirParents(config: Config): void {
-  if (!existsSync(config.dataFolder)) mkdirSync(join(config.dataFolder, '..'), { recursive: true });
 }
 
 async function openDatabase(studio: Studio, closers: (() => void | Promise<void>)[]): Promise<void> {

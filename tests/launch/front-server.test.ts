@@ -78,7 +78,6 @@ beforeAll(async () => {
   mkdirSync(join(folder, 'site/_astro'));
   mkdirSync(join(folder, 'uploads/ab'), { recursive: true });
   writeFileSync(join(folder, 'site/forms/index.html'), page);
-  writeFileSync(join(folder, 'site/404.html'), '<!doctype html><title>Nothing here</title>');
   writeFileSync(join(folder, 'site/_astro/a.B1.js'), 'export {};');
   writeFileSync(join(folder, 'uploads/ab/piece.stl'), stored);
   writeFileSync(join(folder, 'database-password'), 'secret');
@@ -117,10 +116,10 @@ describe('a built page', () => {
     expect((await ask('/forms')).headers['cache-control']).toBe('no-cache');
   });
 
-  it('that is missing is the 404 page', async () => {
+  it('that no page knows is not found', async () => {
     const answer = await ask('/nothing');
     expect(answer.status).toBe(404);
-    expect(answer.body.toString()).toContain('Nothing here');
+    expect(JSON.parse(answer.body.toString()).problem.message).toBe('There is nothing at this address.');
   });
 });
 

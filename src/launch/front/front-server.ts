@@ -59,12 +59,7 @@ export function createFrontServer(config: Config, log: Logger, staticFolder: str
       (file) => deliverFile(req, res, config.dataFolder, file, (err) => log.warn({ err }, 'a file was not delivered')),
     );
     const refuseUnknown = () => refuse(res, nothingHere, withPolicy('text/plain'));
-    void pages(req, res, () => {
-      if (answerStatic(req, res, '/404.html', 404)) return;
-      if (!isRead(req) || path.startsWith('/api/')) return refuseUnknown();
-      req.url = '/404';
-      void pages(req, res, refuseUnknown);
-    });
+    void pages(req, res, () => refuse(res, nothingHere, withPolicy('application/json')));
   }
 
   const server = createServer((req, res) => {

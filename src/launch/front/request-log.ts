@@ -17,13 +17,15 @@ export function loggablePath(target: string): string {
 export function logRequest(req: IncomingMessage, res: ServerResponse, log: Logger): void {
   const id = randomUUID();
   const begun = performance.now();
+  // Astro rewrites the address of a request it turns away.
+  const path = loggablePath(req.url ?? '');
   req.headers['x-request-id'] = id;
   res.setHeader('x-request-id', id);
   res.once('close', () => {
     const line = {
       id,
       method: req.method,
-      path: loggablePath(req.url ?? ''),
+      path,
       status: res.statusCode,
       ms: Math.round(performance.now() - begun),
       ...(!res.writableFinished && { cut: true }),

@@ -38,7 +38,7 @@ interface StaticFile {
 }
 
 /** Answers from memory with a built page or asset; false when there is none at this path. */
-export type StaticFiles = (req: IncomingMessage, res: ServerResponse, path: string, status?: number) => boolean;
+export type StaticFiles = (req: IncomingMessage, res: ServerResponse, path: string) => boolean;
 
 /**
  * Reads the built site into memory. Each file is compressed once, when first asked for.
@@ -55,10 +55,10 @@ export function loadStaticFiles(folder: string, pageHeaders: (type: string) => O
     files.set(path, file);
     if (path.endsWith('/index.html')) files.set(path.slice(0, -'/index.html'.length) || '/', file);
   }
-  return (req, res, path, status = 200) => {
+  return (req, res, path) => {
     const file = files.get(path) ?? files.get(plainSpelling(path));
     if (!file) return false;
-    sendStatic(req, res, file, status);
+    sendStatic(req, res, file);
     return true;
   };
 }
@@ -79,14 +79,14 @@ function readStaticFile(file: string, path: string, pageHeaders: (type: string) 
   return { body, etag, headers, compressible, variants: {} };
 }
 
-function sendStatic(req: IncomingMessage, res: ServerResponse, file: StaticFile, status: number): void {
-  if (status === 200 && req.headers['if-none-match']?.includes(file.etag)) {
+function sendStatic(req: IncomingMessage, res: ServerResponse, file: StaticFile): void {
+  if (req.headers['if-none-match']?.includes(file.etag)) {
     res.writeHead(304, file.headers);
     res.end();
     return;
   }
   const { body, headers } = variantFor(file, req.headers['accept-encoding']);
-  res.writeHead(status, headers);
+  res.writeHead(200, headers);
   res.end(req.method === 'HEAD' ? undefined : body);
 }
 
