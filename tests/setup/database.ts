@@ -21,8 +21,11 @@ export async function createTestDatabase(): Promise<TestDatabase> {
   const name = `test_${randomUUID().replaceAll('-', '')}`;
   await inCluster(`create database ${name} template pourwright_template`);
   const url = Object.assign(new URL(inject('clusterUrl')), { pathname: `/${name}` }).href;
-  const { db, pool } = openDatabase(url, (error) => console.error(error));
+  let dropping = false;
+  // A connection may still be closing when its database is dropped; that it is told so is no fault.
+  const { db, pool } = openDatabase(url, (error) => dropping || console.error(error));
   const drop = async () => {
+    dropping = true;
     await pool.end();
     await inCluster(`drop database ${name} with (force)`);
   };

@@ -1,5 +1,5 @@
 import { Logger as QueueLogger, run, type Runner, type TaskList } from 'graphile-worker';
-import type pg from 'pg';
+import pg from 'pg';
 import type { Logger } from 'pino';
 import { queueJob } from '../outbox';
 import type { Services } from '../services';
@@ -9,6 +9,8 @@ import { CLOCK_TASKS, TASKS } from './tasks';
 const WORKER_LOCK = 7_306_852;
 const LOOK_AGAIN_MS = 1_000;
 const CONCURRENCY = 4;
+/** Name of the worker's connections in the database's own list. */
+const WORKER_NAME = 'pourwright worker';
 
 /** A worker that can be ended. */
 export interface Worker {
@@ -48,32 +50,55 @@ async function keepWorking(services: Services, stopping: AbortSignal, settled: (
 
 /** Works as long as this process holds the lock; returns at once when another process holds it. */
 async function workWhileMine(services: Services, stopping: AbortSignal, settled: () => void): Promise<void> {
-  const guard = await services.pool.connect();
-  const lost = new AbortController();
-  guard.on('error', (error) => {
-    services.log.warn({ err: error }, 'the worker lost its database connection');
-    lost.abort();
-  });
+  const pool = openPool(services);
   try {
-    if (!(await takeLock(guard))) return;
-    await releaseDeadWorkers(services);
-    const runner = await run({
-      pgPool: services.pool,
-      taskList: taskList(services),
-      crontab: Object.entries(CLOCK_TASKS)
-        .map(([task, when]) => `${when} ${task} ?jobKey=clock:${task}&max=5`)
-        .join('\n'),
-      concurrency: CONCURRENCY,
-      pollInterval: LOOK_AGAIN_MS,
-      noHandleSignals: true,
-      logger: queueLogger(services.log),
-    });
-    settled();
-    await runClockNow(services);
-    await untilEnded(runner, AbortSignal.any([stopping, lost.signal]));
+    const guard = await pool.connect();
+    const lost = new AbortController();
+    guard.on('error', () => lost.abort());
+    guard.on('end', () => lost.abort());
+    try {
+      if (await takeLock(guard)) await work(services, pool, AbortSignal.any([stopping, lost.signal]), settled);
+    } finally {
+      guard.release(true);
+    }
   } finally {
-    guard.release(true);
+    await pool.end();
   }
+}
+
+async function work(services: Services, pool: pg.Pool, leave: AbortSignal, settled: () => void): Promise<void> {
+  await releaseDeadWorkers(services, pool);
+  const runner = await run({
+    pgPool: pool,
+    taskList: taskList(services),
+    crontab: Object.entries(CLOCK_TASKS)
+      .map(([task, when]) => `${when} ${task} ?jobKey=clock:${task}&max=5`)
+      .join('\n'),
+    concurrency: CONCURRENCY,
+    pollInterval: LOOK_AGAIN_MS,
+    noHandleSignals: true,
+    logger: queueLogger(services.log),
+    // In batches the queue retries its own bookkeeping and ends in order when the database stays away; without
+    // them such a failure is a rejected promise that nobody holds, which ends the process.
+    preset: { worker: { completeJobBatchDelay: 0, failJobBatchDelay: 0 } },
+  });
+  settled();
+  await runClockNow(services);
+  await untilEnded(runner, leave);
+}
+
+/** The worker's own connections, so that jobs never keep a page waiting for one. */
+function openPool({ config, log }: Services): pg.Pool {
+  const pool = new pg.Pool({
+    connectionString: config.databaseUrl,
+    max: CONCURRENCY + 3,
+    connectionTimeoutMillis: 15_000,
+    application_name: WORKER_NAME,
+  });
+  const tell = (error: Error) => log.warn({ err: error }, 'a database connection of the worker broke');
+  pool.on('error', tell);
+  pool.on('connect', (client) => client.on('error', tell));
+  return pool;
 }
 
 async function takeLock(guard: pg.PoolClient): Promise<boolean> {
@@ -82,7 +107,7 @@ async function takeLock(guard: pg.PoolClient): Promise<boolean> {
 }
 
 /** Jobs still marked as taken belong to a process that died: nobody else can hold the lock now. */
-async function releaseDeadWorkers({ pool, log }: Services): Promise<void> {
+async function releaseDeadWorkers({ log }: Services, pool: pg.Pool): Promise<void> {
   const { rows } = await pool.query<{ locked_by: string }>(
     'select distinct locked_by from graphile_worker.jobs where locked_by is not null',
   );
