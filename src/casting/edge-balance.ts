@@ -27,6 +27,26 @@ function cornerName(t: Triangle, corner: number, seed: number): number {
 
 const LANES = 2;
 
+/** Keeps the edges that have no partner yet, as long as they are not too many. */
+function createOpenEdges() {
+  let open: Map<number, number> | null = new Map();
+  return {
+    count(key: number, step: number): void {
+      if (!open) return;
+      const next = (open.get(key) ?? 0) + step;
+      if (next === 0) open.delete(key);
+      else open.set(key, next);
+      if (open.size > MOST_OPEN) open = null;
+    },
+    total(): number | null {
+      if (!open) return null;
+      let total = 0;
+      for (const surplus of open.values()) total += Math.abs(surplus);
+      return total;
+    },
+  };
+}
+
 /**
  * Watches the edges of a surface. A surface bounds a solid exactly when every edge is walked as often one way as the
  * other; then its volume does not depend on the origin. Two answers:
@@ -37,38 +57,24 @@ const LANES = 2;
 export function createEdgeBalance() {
   const sums = new Int32Array(LANES);
   const parity = new Int32Array(LANES);
-  let open: Map<number, number> | null = new Map();
   const names = new Int32Array(3 * LANES);
+  const open = createOpenEdges();
+  const name = (corner: number, lane: number) => names[corner * LANES + lane] as number;
+  const same = (i: number, j: number) => name(i, 0) === name(j, 0) && name(i, 1) === name(j, 1);
 
   /** One directed edge between corners i and j of the triangle whose names are loaded. */
   function edge(i: number, j: number): void {
+    const forward = name(i, 0) < name(j, 0) || (name(i, 0) === name(j, 0) && name(i, 1) < name(j, 1));
+    const [from, to] = forward ? [i, j] : [j, i];
+    const step = forward ? 1 : -1;
     let key = 0;
-    let forward = true;
     for (let lane = 0; lane < LANES; lane++) {
-      const a = names[i * LANES + lane] as number;
-      const b = names[j * LANES + lane] as number;
-      if (lane === 0)
-        forward = a < b || (a === b && (names[i * LANES + 1] as number) < (names[j * LANES + 1] as number));
-      const name = forward ? stir(stir(lane + 1, a), b) : stir(stir(lane + 1, b), a);
-      sums[lane] = (sums[lane] as number) + (forward ? name : -name);
-      parity[lane] = (parity[lane] as number) ^ name;
-      if (lane === 0) key = (name >>> 0) * 0x200000;
-      if (lane === 1) key += (name >>> 0) & 0x1fffff;
+      const word = stir(stir(lane + 1, name(from, lane)), name(to, lane));
+      sums[lane] = (sums[lane] as number) + step * word;
+      parity[lane] = (parity[lane] as number) ^ word;
+      key = lane === 0 ? (word >>> 0) * 0x200000 : key + ((word >>> 0) & 0x1fffff);
     }
-    count(key, forward ? 1 : -1);
-  }
-
-  function count(key: number, step: number): void {
-    if (!open) return;
-    const next = (open.get(key) ?? 0) + step;
-    if (next === 0) open.delete(key);
-    else open.set(key, next);
-    if (open.size > MOST_OPEN) open = null;
-  }
-
-  function same(i: number, j: number): boolean {
-    for (let lane = 0; lane < LANES; lane++) if (names[i * LANES + lane] !== names[j * LANES + lane]) return false;
-    return true;
+    open.count(key, step);
   }
 
   return {
@@ -85,11 +91,6 @@ export function createEdgeBalance() {
     balanced: () => sums.every((sum) => sum === 0),
     /** Every edge is used an even number of times, whichever way: closed, if only the triangles were turned alike. */
     paired: () => parity.every((sum) => sum === 0),
-    openEdges: (): number | null => {
-      if (!open) return null;
-      let total = 0;
-      for (const surplus of open.values()) total += Math.abs(surplus);
-      return total;
-    },
+    openEdges: open.total,
   };
 }

@@ -63,6 +63,12 @@ function joined(parts: readonly Uint8Array[]): Uint8Array {
   return whole;
 }
 
+function tooMany(count: number, most: number): StlProblem {
+  const [many, limit] = [count, most].map((value) => value.toLocaleString('en-GB'));
+  const message = `The file has ${many} triangles; we read up to ${limit}. Reduce its detail and send it again.`;
+  return { code: 'too-many', message };
+}
+
 /**
  * Reads an STL, binary or ASCII, from chunks of any length, and measures it; a file of any size needs bounded memory.
  * The format is decided by the content, not by the word "solid" alone. Errors are values that say what and where.
@@ -77,17 +83,9 @@ export function createStlReader(options: StlOptions = {}) {
   let format: 'binary' | 'ascii' = 'binary';
   let problem: StlProblem | undefined;
 
-  const tooMany = (count: number): StlProblem => {
-    const [many, limit] = [count, most].map((value) => value.toLocaleString('en-GB'));
-    return {
-      code: 'too-many',
-      message: `The file has ${many} triangles; we read up to ${limit}. Reduce its detail and send it again.`,
-    };
-  };
-
   const take = (triangle: Triangle) => {
     triangles += 1;
-    if (triangles > most) problem ??= tooMany(triangles);
+    if (triangles > most) problem ??= tooMany(triangles, most);
     if (problem) return;
     measurer.add(triangle);
     options.sink?.(triangle);
@@ -103,7 +101,7 @@ export function createStlReader(options: StlOptions = {}) {
       return;
     }
     format = found;
-    if (found === 'binary' && countOf(head) > most) problem = tooMany(countOf(head));
+    if (found === 'binary' && countOf(head) > most) problem = tooMany(countOf(head), most);
     else if (found === 'binary') body = createBinaryRecords(countOf(head), take);
     else body = createAsciiReader(take);
     body?.push(found === 'binary' ? head.subarray(HEADER_BYTES) : head);

@@ -10,6 +10,7 @@ import type { Bin, Estimate, PricedQuote } from './pricing-results';
 import { done, type Outcome } from './problem';
 import { priceQuote } from './quote';
 import type { QuoteDraft } from './quote-draft';
+import { usualValidityDays } from './quote-warnings';
 
 /** Cost in the studio's currency as the price it comes to in the quoted one, not rounded to a step. */
 function asPrice(draft: QuoteDraft, costMinor: number): number {
@@ -99,6 +100,7 @@ export function draftFromEstimate(request: EstimateRequest, card: RateCard): Out
   const subject = findSubject(request, card);
   if (!subject.ok) return subject;
   const draft = draftForRequest(request, subject.value, card.rates);
-  const { rangeMinor } = priceQuote(draft);
-  return done({ ...draft, shownRange: { lowMinor: rangeMinor.low, highMinor: rangeMinor.high } });
+  const priced = priceQuote(draft);
+  const shownRange = { lowMinor: priced.rangeMinor.low, highMinor: priced.rangeMinor.high };
+  return done({ ...draft, shownRange, validityDays: usualValidityDays(draft, priced) });
 }
