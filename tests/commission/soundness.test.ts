@@ -122,7 +122,8 @@ describe('how far a belief may be off', () => {
     const shape = fc.double({ min: 1, max: 300, noNaN: true });
     fc.assert(
       fc.property(shape, shape, fc.double({ min: 0.001, max: 0.999, noNaN: true }), (a, b, x) => {
-        expect(betaChance(x, a, b)).toBeCloseTo(jStat.ibeta(x, a, b), 8);
+        // jStat ends its continued fraction at a step of 3e-7, so it is good for six places.
+        expect(betaChance(x, a, b)).toBeCloseTo(jStat.ibeta(x, a, b), 6);
         expect(lnGamma(a)).toBeCloseTo(jStat.gammaln(a), 8);
         expect(betaChance(betaQuantile(x, a, b), a, b)).toBeCloseTo(x, 8);
       }),
