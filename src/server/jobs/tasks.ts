@@ -3,6 +3,7 @@ import { sendMail } from '../mail/send';
 import { reconcileCheckouts } from '../reconcile';
 import type { Services } from '../services';
 import { sweepSignIns } from '../sign-in-sweep';
+import { sweepUploads } from '../uploads/read-upload';
 import { lapseDeposits, lapseQuotes, requeueMails } from './clock';
 
 /** Work done outside a request. `payload` is what `queueJob` was given, unchecked. */
@@ -18,6 +19,7 @@ export const TASKS: Record<string, Job> = {
   'requeue-mails': async (services) => report(services, 'waiting mails queued again', await requeueMails(services)),
   reconcile: async (services) => report(services, 'payments taken in late', await reconcileCheckouts(services)),
   'sweep-sign-ins': async (services) => report(services, 'rows of past sign-ins deleted', await sweepSignIns(services)),
+  'sweep-uploads': async (services) => report(services, 'forgotten files deleted', await sweepUploads(services)),
 };
 
 /** Tasks that look at the clock: they run at each start and then as written here (minute hour day month weekday, UTC). */
@@ -27,6 +29,7 @@ export const CLOCK_TASKS: Record<string, string> = {
   'requeue-mails': '*/10 * * * *',
   reconcile: '*/5 * * * *',
   'sweep-sign-ins': '27 * * * *',
+  'sweep-uploads': '37 * * * *',
 };
 
 function report({ log }: Services, what: string, count: number): void {
