@@ -1,4 +1,5 @@
 import { costLine, unitCostMinor, type CostLine } from './cost-lines';
+import { unflatten } from './input-fields';
 import type { Desk, DeskLine } from './desk';
 import type { PriceChoice, QuoteDraft } from './quote-draft';
 
@@ -132,4 +133,22 @@ function freeId(taken: Set<string>, index: number): string {
   const id = `line-${number}`;
   taken.add(id);
   return id;
+}
+
+/**
+ * The desk's fields with what a refused plain form had typed put over them, so that nothing typed is lost.
+ *
+ * @param typed names as the form sends them ("lines.0.minutes"), values as text
+ */
+export function fieldsWithTyped(fields: DeskFields, typed: Record<string, string | string[]>): DeskFields {
+  const nested = unflatten(typed) as Partial<Record<keyof DeskFields, unknown>>;
+  const text = Object.entries(nested).filter(([name, value]) => name in fields && typeof value === 'string');
+  const lines = Array.isArray(nested.lines) ? nested.lines.map(lineWithTyped) : fields.lines;
+  return { ...fields, ...Object.fromEntries(text), lines, version: fields.version };
+}
+
+function lineWithTyped(typed: unknown): DeskLineFields {
+  const line = (typed ?? {}) as Record<string, unknown>;
+  const texts = Object.entries(line).filter(([name, value]) => name in BLANK_LINE && typeof value === 'string');
+  return { ...BLANK_LINE, ...Object.fromEntries(texts), drop: line['drop'] !== undefined };
 }

@@ -16,6 +16,8 @@ import { acceptances } from '../db/schema/quotes';
 import { mails } from '../db/schema/studio';
 import { factsOf, readUploads, type UploadRow } from '../enquiry-mails';
 import { readBalance } from '../ledger';
+import { LETTER_NAMES, type LetterId } from '../mail/letter-ids';
+import { MAIL_WORDS } from '../mail-log';
 import { readMessages, type MessageView } from '../messages';
 import { readAttempts, readPieces, type AttemptRow, type PieceRow } from '../pieces';
 import { isIntact } from '../quote-body';
@@ -39,9 +41,12 @@ export interface RevisionLine {
 /** A mail of this commission and where it stands. */
 export interface MailState {
   id: string;
-  letter: string;
+  /** What the letter is called, and its state, in the owner's words. */
+  name: string;
+  words: string;
+  /** It did not arrive, or was not wanted. */
+  trouble: boolean;
   to: string;
-  state: string;
   createdAt: Date;
 }
 
@@ -121,12 +126,16 @@ async function acceptanceOf(db: Db, id: string): Promise<OwnerCommission['accept
   return row ? { typedName: row.typedName, at: row.acceptedAt, address: row.address } : null;
 }
 
-function mailStates(db: Db, id: string): Promise<MailState[]> {
-  return db
-    .select({ id: mails.id, letter: mails.letter, to: mails.to, state: mails.state, createdAt: mails.createdAt })
-    .from(mails)
-    .where(eq(mails.commissionId, id))
-    .orderBy(desc(mails.createdAt));
+async function mailStates(db: Db, id: string): Promise<MailState[]> {
+  const rows = await db.select().from(mails).where(eq(mails.commissionId, id)).orderBy(desc(mails.createdAt));
+  return rows.map((row) => ({
+    id: row.id,
+    name: LETTER_NAMES[row.letter as LetterId] ?? row.letter,
+    words: MAIL_WORDS[row.state],
+    trouble: ['bounced', 'complained', 'failed'].includes(row.state),
+    to: row.to,
+    createdAt: row.createdAt,
+  }));
 }
 
 function earlierOf(db: Db, row: CommissionRow): Promise<OwnerCommission['earlier']> {

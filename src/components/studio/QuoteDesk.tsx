@@ -1,0 +1,209 @@
+import { useEffect, useRef, useState } from 'react';
+import { useForm, useWatch } from 'react-hook-form';
+import { BLANK_LINE, type DeskFields } from '../../commission/desk-fields';
+import type { Problem } from '../../commission/problem';
+import type { QuoteDraft } from '../../commission/quote-draft';
+import { Button } from '../ui/Button';
+import { FormProblem } from '../ui/FormProblem';
+import { Notice } from '../ui/Notice';
+import { linesOfRows, readDesk, typedBefore, type DeskReading } from './desk-reading';
+import { DeskPrice } from './DeskPrice';
+import { CostSums, PriceSums } from './DeskSums';
+import { DeskTable } from './DeskTable';
+import { DeskWords } from './DeskWords';
+import { saveDesk, savedVersion } from './save-desk';
+import { SendPanel } from './SendPanel';
+
+export interface QuoteDeskProps {
+  /** The commission's number. */
+  reference: string;
+  customer: string;
+  revision: number;
+  /** The draft as it is saved, or as it comes from the estimate. */
+  draft: QuoteDraft;
+  /** What the fields show: the draft's own values, or what a refused form had typed. */
+  fields: DeskFields;
+  problem: Problem | null;
+  /** What differs between the saved draft and what was typed, after another window saved first. */
+  differences: string[];
+  /** Opens with the last look before sending. */
+  review: boolean;
+  ratesChanged: boolean;
+}
+
+const FORM = 'desk';
+
+/** The quote desk: every cost line to type into, priced again at each key, saved and sent through the same doors as without scripts. */
+export function QuoteDesk(props: QuoteDeskProps) {
+  const { reference, draft, fields } = props;
+  const desk = useDesk(props);
+  const { form, reading, rows, standing } = desk;
+  const errors = { ...standing.problem?.fields, ...reading.errors };
+  return (
+    <div>
+      <form
+        method="post"
+        action={`/api/commissions/${reference}/quote-draft`}
+        id={FORM}
+        className="desk-form"
+        noValidate
+        onSubmit={desk.submit}
+      >
+        <div className="desk-lines">
+          <p className="text-muted">
+            {reference}, quote revision {standing.revision}
+          </p>
+          <h1 className="desk-title">{reading.draft.title}</h1>
+          <div className="mt-3">
+            <FormProblem problem={standing.problem} />
+          </div>
+          <Differences list={props.differences} />
+          <input type="hidden" name="version" value={standing.version} readOnly />
+          <DeskTable
+            form={form}
+            rows={rows}
+            draft={draft}
+            errors={errors}
+            lines={linesOfRows(reading.draft, desk.values.lines)}
+          />
+          <DeskWords form={form} initial={fields} errors={errors} currency={draft.currency.studio} />
+        </div>
+        <div className="desk-sums">
+          <CostSums draft={reading.draft} priced={reading.priced} />
+          <hr className="parting-line mt-4" />
+          <PriceSums draft={reading.draft} priced={reading.priced} />
+          <DeskPrice form={form} initial={fields} errors={errors} priced={reading.priced} />
+          <Warnings reading={reading} />
+          <div className="mt-6 grid gap-3">
+            <Button kind="main" name="act" value="review" wide>
+              Send revision {standing.revision}
+            </Button>
+            <Button kind="quiet" name="act" value="save" wide>
+              Save the draft
+            </Button>
+            {props.ratesChanged && (
+              <>
+                <p className="hint">Metal, rates or the queue have changed since this draft was begun.</p>
+                <Button name="act" value="reprice" wide>
+                  Take today’s rates
+                </Button>
+              </>
+            )}
+            <p className="hint" role="status">
+              {standing.said}
+            </p>
+          </div>
+        </div>
+      </form>
+      {standing.review && (
+        <SendPanel
+          reference={reference}
+          revision={standing.revision}
+          version={standing.version}
+          draft={reading.draft}
+          priced={reading.priced}
+          customer={props.customer}
+        />
+      )}
+    </div>
+  );
+}
+
+function Differences({ list }: { list: string[] }) {
+  if (list.length === 0) return null;
+  return (
+    <Notice kind="info" title="What you typed differs from what is saved:">
+      <ul>
+        {list.map((line) => (
+          <li key={line}>{line}</li>
+        ))}
+      </ul>
+    </Notice>
+  );
+}
+
+function Warnings({ reading }: { reading: DeskReading }) {
+  const { warnings } = reading.priced;
+  if (warnings.length === 0) return null;
+  return (
+    <ul className="mt-4 grid gap-2 text-note">
+      {warnings.map((warning) => (
+        <li key={warning.message} className={warning.blocking ? 'font-[650] text-loss-ink' : 'text-molten-ink'}>
+          {warning.message}
+        </li>
+      ))}
+    </ul>
+  );
+}
+
+interface Standing {
+  version: number;
+  revision: number;
+  problem: Problem | null;
+  review: boolean;
+  said: string;
+}
+
+/** The desk's state: the form, its reading at each change, and what came of the last press. */
+function useDesk(props: QuoteDeskProps) {
+  const [start] = useState(() => typedBefore(FORM, props.fields));
+  const form = useForm<DeskFields>({ defaultValues: start });
+  const watched = useWatch({ control: form.control }) as DeskFields;
+  const [isHere, setIsHere] = useState(false);
+  useEffect(() => setIsHere(true), []);
+  const values = isHere ? watched : props.fields;
+  const last = useRef<DeskReading>(undefined);
+  const reading = readDesk(props.draft, values, last.current);
+  useEffect(() => {
+    last.current = reading;
+  });
+  const [rows, setRows] = useState(props.fields.lines);
+  const isLastFilled = (watched.lines?.[rows.length - 1]?.label ?? '').trim() !== '';
+  useEffect(() => {
+    if (isLastFilled) setRows((before) => [...before, BLANK_LINE]);
+  }, [isLastFilled]);
+  const [standing, setStanding] = useState<Standing>({
+    version: Number(props.fields.version),
+    revision: props.revision,
+    problem: props.problem,
+    review: props.review,
+    said: '',
+  });
+  const submit = useSubmit(props, form.getValues, standing, setStanding);
+  return { form, values, reading, rows, standing, submit };
+}
+
+function useSubmit(
+  { reference }: QuoteDeskProps,
+  read: () => DeskFields,
+  standing: Standing,
+  set: (standing: Standing) => void,
+) {
+  return (event: React.FormEvent<HTMLFormElement>) => {
+    const pressed = (event.nativeEvent as SubmitEvent).submitter;
+    const act = pressed instanceof HTMLButtonElement ? pressed.value : 'save';
+    if (act === 'reprice') return;
+    event.preventDefault();
+    set({ ...standing, said: 'Saving…' });
+    void save(reference, { ...read(), version: String(standing.version) }, standing, act === 'review').then((after) => {
+      set(after);
+      if (after.review) setTimeout(() => document.getElementById('send')?.focus());
+    });
+  };
+}
+
+async function save(reference: string, fields: DeskFields, standing: Standing, review: boolean): Promise<Standing> {
+  const saved = await saveDesk(reference, fields);
+  if (saved.ok) {
+    const said = 'The draft is saved.';
+    return { version: saved.version, revision: saved.revision, problem: null, review, said };
+  }
+  const version = saved.problem.code === 'stale' ? await savedVersion(reference) : null;
+  return {
+    ...standing,
+    version: version ?? standing.version,
+    problem: saved.problem,
+    review: false,
+    said: 'Not saved.',
+  };
+}

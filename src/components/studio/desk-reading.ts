@@ -1,0 +1,45 @@
+import type { CostLine } from '../../commission/cost-lines';
+import { deskSchema } from '../../commission/desk';
+import { applyDesk, fieldsWithTyped, type DeskFields } from '../../commission/desk-fields';
+import type { PricedQuote } from '../../commission/pricing-results';
+import { priceQuote } from '../../commission/quote';
+import type { QuoteDraft } from '../../commission/quote-draft';
+
+/** A desk as it stands: the draft it makes and its price; while a field cannot be read, the last ones that could. */
+export interface DeskReading {
+  draft: QuoteDraft;
+  priced: PricedQuote;
+  /** Sentence of each field that cannot be read, by its name. */
+  errors: Record<string, string>;
+}
+
+/** Reads the desk's fields by the server's own schema and prices them by the server's own function. */
+export function readDesk(saved: QuoteDraft, fields: DeskFields, before?: DeskReading): DeskReading {
+  const parsed = deskSchema.safeParse(fields);
+  if (parsed.success) {
+    const draft = applyDesk(saved, parsed.data);
+    return { draft, priced: priceQuote(draft), errors: {} };
+  }
+  const errors: Record<string, string> = {};
+  for (const issue of parsed.error.issues) errors[issue.path.join('.')] ??= issue.message;
+  return before ? { ...before, errors } : { draft: saved, priced: priceQuote(saved), errors };
+}
+
+/** The cost line that each row stands for, in the rows' order; null for a blank row and one left out. */
+export function linesOfRows(draft: QuoteDraft, rows: DeskFields['lines']): (CostLine | null)[] {
+  let next = 0;
+  return rows.map((row) => {
+    if (row.drop || (row.id === '' && row.label.trim() === '')) return null;
+    next += 1;
+    return draft.lines[next - 1] ?? null;
+  });
+}
+
+/** What was typed into the plain form before its script came: in the browser the form's own values, else the given ones. */
+export function typedBefore(formId: string, fields: DeskFields): DeskFields {
+  if (typeof document === 'undefined') return fields;
+  const form = document.getElementById(formId);
+  if (!(form instanceof HTMLFormElement)) return fields;
+  const texts = [...new FormData(form)].filter((entry): entry is [string, string] => typeof entry[1] === 'string');
+  return fieldsWithTyped(fields, Object.fromEntries(texts));
+}
