@@ -18,7 +18,8 @@ export async function checkStep(
   by: { role: Role; now: Date },
 ): Promise<Outcome<'step' | 'repeat'>> {
   if (piece.stage === input.to) return done('repeat');
-  if (!['booked', 'making', 'rework'].includes(commission.deal)) {
+  const deals = input.to === 'packed' ? ['booked', 'making', 'rework', 'finished'] : ['booked', 'making', 'rework'];
+  if (!deals.includes(commission.deal)) {
     return refuse('conflict', 'This commission is not at the bench. Reload the page to see where it stands.');
   }
   if (piece.stage !== input.from || nextStage(piece.route, piece.stage) !== input.to) {
