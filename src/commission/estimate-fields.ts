@@ -48,18 +48,6 @@ export function ownChoices(form: PricedForm): EstimateFields {
   };
 }
 
-/**
- * Inputs after another form was chosen: sizes, edge, haft and hours belonged to the earlier one (`sized`, its slug) and
- * start from the new form's own; an alloy or finish that fits stays.
- */
-export function settleForm(fields: EstimateFields, sized: string | undefined, { forms }: RateCard): EstimateFields {
-  const form = forms.find(({ slug }) => slug === fields.form);
-  if (!form || sized === undefined || sized === form.slug) return fields;
-  const own = ownChoices(form);
-  const alloy = fields.alloy && form.alloys.includes(fields.alloy) ? fields.alloy : own.alloy;
-  return { ...fields, ...own, alloy, finish: fields.finish || own.finish, finishHours: '' };
-}
-
 const USUAL: EstimateFields = {
   what: 'form',
   pieces: '1',
@@ -72,6 +60,55 @@ const USUAL: EstimateFields = {
 function usualOfOwn({ alloys, finishes, edges }: RateCard['rates']): EstimateFields {
   const finish = finishes.find(({ factor }) => factor === 1)?.code;
   return { alloy: alloys[0]?.code, finish, edge: edges[0]?.code, haft: 'none' };
+}
+
+const SIZED = ['lengthMm', 'widthMm', 'thicknessMm', 'edge', 'haft', 'finishHours'] as const satisfies EstimateField[];
+
+const spoken = (fields: EstimateFields): EstimateFields =>
+  Object.fromEntries(Object.entries(fields).filter(([, value]) => value.trim() !== ''));
+
+/** Alloy, edge and haft that the chosen form does not come in give way to its own. */
+function fitting(fields: EstimateFields, form: PricedForm): EstimateFields {
+  const usual = ownChoices(form);
+  const offers = {
+    alloy: form.alloys,
+    edge: form.intendedEdges as string[],
+    haft: ['none', ...form.haft.map(({ code }) => code)],
+  };
+  const fits = (field: keyof typeof offers) => offers[field].includes(fields[field] ?? '');
+  return {
+    ...fields,
+    alloy: fits('alloy') ? fields.alloy : usual.alloy,
+    edge: fits('edge') ? fields.edge : usual.edge,
+    haft: fits('haft') ? fields.haft : usual.haft,
+  };
+}
+
+/**
+ * Every input with what stands in it when only some were said. `sized` is the form that the sizes belong to: after
+ * another was chosen they start from that one's own, and what does not fit it gives way. Without `sized`, as in an
+ * address written by hand, what does not fit stays and is refused.
+ */
+export function settleFields(
+  typed: EstimateFields,
+  sized: string | undefined,
+  { rates, forms }: RateCard,
+  firstForm: string,
+): EstimateFields {
+  const said = spoken(typed);
+  const base = { ...USUAL, currency: rates.currency, form: firstForm };
+  if (said.what === 'own') {
+    const haft = ['none', 'haft'].includes(said.haft ?? '') ? said.haft : 'none';
+    return { ...base, ...usualOfOwn(rates), ...said, haft };
+  }
+  const form = forms.find(({ slug }) => slug === (said.form ?? firstForm));
+  if (!form) return { ...base, ...said };
+  const isOther = sized !== undefined && sized !== form.slug;
+  const kept = isOther
+    ? Object.fromEntries(Object.entries(said).filter(([field]) => !SIZED.some((name) => name === field)))
+    : said;
+  const fields = { ...base, ...ownChoices(form), ...kept };
+  return sized === undefined ? fields : fitting(fields, form);
 }
 
 /** The inputs that differ from what the page shows by itself, as a query: short enough to send to somebody. */

@@ -17,7 +17,7 @@ export interface Choice {
 export interface PriceChoices {
   /** The chosen form; null for a piece of the buyer's own, and while the form is unknown. */
   form: Pick<PricedForm, 'slug' | 'name' | 'period' | 'dimensionsMm' | 'bladed' | 'massesG'> | null;
-  alloys: Choice[];
+  alloys: (Choice & { densityGPerCm3: number })[];
   finishes: Choice[];
   /** Empty when the piece has no edge. */
   edges: Choice[];
@@ -50,7 +50,7 @@ function choicesFor(fields: EstimateFields, { rates, forms }: RateCard): PriceCh
     },
     alloys: rates.alloys
       .filter(({ code }) => (form ? form.alloys.includes(code) : own))
-      .map(({ code, plainName }) => ({ code, name: plainName })),
+      .map(({ code, plainName, densityGPerCm3 }) => ({ code, name: plainName, densityGPerCm3 })),
     finishes: rates.finishes.map(named),
     edges: rates.edges.filter(({ code }) => edged.some((edge) => edge === code)).map(named),
     hafts: hafts.length > 0 ? [without, ...hafts.map(named)] : [],

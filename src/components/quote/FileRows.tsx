@@ -1,0 +1,100 @@
+import { measureWords } from '../../casting/measure-words';
+import type { FileDropProps } from './FileDrop';
+import { sizeWords, type Upload } from './uploads';
+
+const KINDS = { picture: 'Picture', document: 'Drawing', mesh: '3D file', step: '3D file, kept as it is' } as const;
+
+interface ArrivedFileProps extends Pick<FileDropProps, 'alloy' | 'onMeasure'> {
+  file: Upload;
+  onRemove: () => void;
+}
+
+/** A file in the studio's keeping, with its small picture or its measure in words. */
+export function ArrivedFile({ file, alloy, onMeasure, onRemove }: ArrivedFileProps) {
+  const { measure } = file;
+  const volume = measure?.volumeMm3 ?? null;
+  return (
+    <li className="file-row">
+      {file.thumb ? <img src={file.thumb} alt="" width="72" height="72" loading="lazy" /> : <span aria-hidden="true" />}
+      <div>
+        <p className="font-[650] break-all">{file.name}</p>
+        <p className="hint">
+          {KINDS[file.kind]}, {sizeWords(file.bytes)}, received.
+        </p>
+        {measure && (
+          <ul className="file-measure">
+            {measureWords(measure, alloy).map((sentence) => (
+              <li key={sentence}>{sentence}</li>
+            ))}
+          </ul>
+        )}
+        {measure && volume !== null && onMeasure && (
+          <button
+            type="button"
+            className="button button-quiet mt-2"
+            onClick={() =>
+              onMeasure({
+                volumeMm3: Math.round(volume),
+                longestMm: Math.round(Math.max(...measure.boxMm) * 10) / 10,
+              })
+            }
+          >
+            Price it by this measure
+          </button>
+        )}
+      </div>
+      <button type="button" className="button-text" onClick={onRemove} aria-label={`Remove ${file.name}`}>
+        Remove
+      </button>
+    </li>
+  );
+}
+
+interface SendingFileProps {
+  name: string;
+  /** Bytes gone so far, and all of them. */
+  sent: number;
+  whole: number;
+  error: string | null;
+  onRetry: () => void;
+  onRemove: () => void;
+}
+
+/** A file on its way, or one that did not get there. */
+export function SendingFile({ name, sent, whole, error, onRetry, onRemove }: SendingFileProps) {
+  return (
+    <li className="file-row">
+      <span aria-hidden="true" />
+      <div>
+        <p className="font-[650] break-all">{name}</p>
+        {error ? (
+          <p className="error">{error}</p>
+        ) : (
+          <>
+            <progress className="file-progress" max={Math.max(1, whole)} value={sent} aria-label={`Sending ${name}`} />
+            <p className="hint tabular-nums">
+              {sent >= whole && whole > 0
+                ? 'All sent; it is being looked at.'
+                : `${sizeWords(sent)} of ${sizeWords(whole)}`}
+            </p>
+          </>
+        )}
+      </div>
+      <span className="flex flex-wrap justify-end gap-x-4">
+        {error && (
+          <button type="button" className="button-text" onClick={onRetry} aria-label={`Try ${name} again`}>
+            Try again
+          </button>
+        )}
+        <button
+          type="button"
+          className="button-text"
+          onClick={onRemove}
+          aria-label={error ? `Remove ${name}` : `Cancel ${name}`}
+        >
+          {error ? 'Remove' : 'Cancel'}
+        </button>
+      </span>
+    </li>
+  );
+}

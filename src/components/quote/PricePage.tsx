@@ -1,0 +1,80 @@
+import { useMemo, type FormEvent } from 'react';
+import type { Choice } from '../../commission/price-view';
+import { AlloyRows } from './AlloyRows';
+import { Dimensions } from './Dimensions';
+import { HowMany } from './HowMany';
+import { Lines } from './Lines';
+import { LiveRange } from './LiveRange';
+import { Modes } from './Modes';
+import { OwnPiece, OwnSizes } from './OwnPiece';
+import { Piece, type PieceProps } from './Piece';
+import { PriceContext } from './price-context';
+import { PricePanel } from './PricePanel';
+import type { PriceStart } from './price-start';
+import { Reasons } from './Reasons';
+import { Treatment } from './Treatment';
+import { PRICE_FORM, usePrice } from './use-price';
+
+export interface PricePageProps {
+  start: PriceStart;
+  forms: readonly Choice[];
+  countries: readonly Choice[];
+  plate: PieceProps['plate'];
+}
+
+/**
+ * The price page: a plain form the server answers, and once the rate card is here the same form answered at every
+ * change by the same function.
+ */
+export function PricePage({ start, forms, countries, plate }: PricePageProps) {
+  const price = usePrice(start);
+  const { fields, view, live, query } = price;
+  const own = fields.what === 'own';
+  const onSubmit = (event: FormEvent<HTMLFormElement>) => {
+    if (!live) return;
+    event.preventDefault();
+    const submitter = (event.nativeEvent as SubmitEvent).submitter;
+    const enquires = submitter instanceof HTMLButtonElement && submitter.value === 'enquire';
+    if (enquires && view.outcome.ok) return window.location.assign(`/price/enquire?${query}`);
+    price.press();
+    if (!view.outcome.ok) focusFirst(event.currentTarget, view.outcome.problem.fields);
+  };
+  const context = useMemo(() => price, [price]);
+  return (
+    <PriceContext value={context}>
+      <form method="get" action="/price" id={PRICE_FORM} onSubmit={onSubmit} noValidate>
+        <button className="sr-only" type="submit" name="go" value="reckon" tabIndex={-1} aria-hidden="true">
+          Reckon the price
+        </button>
+        <Modes />
+        <div className="price-cope">
+          {own ? <OwnPiece /> : <Piece forms={forms} plate={plate} />}
+          <div>
+            <AlloyRows />
+            <Treatment />
+          </div>
+        </div>
+        <hr className="parting-line" />
+        <div className="price-drag">
+          <div className="price-inputs">
+            {own ? <OwnSizes /> : <Dimensions />}
+            <HowMany countries={countries} />
+          </div>
+          <PricePanel />
+          <div className="price-table">
+            <Lines />
+          </div>
+        </div>
+        <Reasons />
+      </form>
+      <LiveRange />
+    </PriceContext>
+  );
+}
+
+/** Puts the reader on the first input that has to change. */
+function focusFirst(form: HTMLFormElement, fields: Record<string, string> | undefined) {
+  const names = Object.keys(fields ?? {});
+  const inputs = [...form.querySelectorAll<HTMLElement>('input, select, textarea')];
+  inputs.find((input) => names.includes(input.getAttribute('name') ?? ''))?.focus();
+}

@@ -1,0 +1,126 @@
+import { useEffect, useMemo, useState } from 'react';
+import { useForm, type UseFormRegisterReturn } from 'react-hook-form';
+import {
+  ESTIMATE_FIELDS,
+  estimateQuery,
+  settleFields,
+  TICKS,
+  type EstimateField,
+  type EstimateFields,
+} from '../../commission/estimate-fields';
+import { rateCardSchema, type RateCard } from '../../commission/estimate-request';
+import { priceView, type PriceView } from '../../commission/price-view';
+import type { Estimate } from '../../commission/pricing-results';
+import { keepDraft, readDraft } from './draft';
+import { fetchJson } from './fetch-json';
+import type { PriceStart } from './price-start';
+import { typedBefore } from './typed-before';
+
+export const PRICE_FORM = 'price-form';
+
+/** The price page's inputs and what follows from them. */
+export interface Price {
+  fields: EstimateFields;
+  view: PriceView;
+  /** The estimate, or the last one there was while the inputs allow none. */
+  estimate: Estimate | null;
+  /** True once the page reckons by itself; before that its form is sent to the server. */
+  live: boolean;
+  /** The inputs as the page's address has them; null before the page reckons by itself. */
+  query: string | null;
+  errorOf: (field: EstimateField) => string | undefined;
+  register: (field: EstimateField, onChange?: (value: string) => void) => UseFormRegisterReturn;
+  set: (changes: EstimateFields) => void;
+  /** Takes another form, or goes over to a piece of one's own and back. */
+  turnTo: (changes: Pick<EstimateFields, 'what' | 'form'>) => void;
+  /** Tells from now on which inputs are missing. */
+  press: () => void;
+}
+
+type Typed = Partial<Record<EstimateField, string | boolean>>;
+
+/** Inputs as text: react-hook-form knows a box as true or false. */
+function textOf(typed: Typed): EstimateFields {
+  return Object.fromEntries(
+    ESTIMATE_FIELDS.flatMap((field) => {
+      const value = typed[field];
+      return value === undefined || value === null ? [] : [[field, value === true ? 'on' : value || '']];
+    }),
+  );
+}
+
+async function fetchCard(): Promise<RateCard | null> {
+  const parsed = rateCardSchema.safeParse(await fetchJson('/api/rates/card'));
+  return parsed.success ? parsed.data : null;
+}
+
+/** Runs the price page: inputs, estimate at every change, address, draft. */
+export function usePrice(start: PriceStart): Price {
+  const [before] = useState(() => ({ ...start.fields, ...typedBefore(PRICE_FORM, TICKS) }));
+  const { subscribe, getValues, setValue, register } = useForm<Typed>({ defaultValues: before });
+  const [fields, setFields] = useState(start.fields);
+  const [card, setCard] = useState<RateCard | null>(null);
+  const [pressed, setPressed] = useState(start.pressed);
+
+  const set = (changes: EstimateFields) => {
+    for (const [field, value] of Object.entries(changes)) setValue(field as EstimateField, value);
+    setFields(textOf(getValues()));
+  };
+
+  useEffect(() => {
+    let gone = false;
+    void fetchCard().then((fetched) => {
+      if (gone || !fetched) return;
+      const { estimate: kept } = readDraft();
+      if (start.bare && kept) {
+        const settled = settleFields(kept, undefined, fetched, start.fields.form ?? '');
+        for (const field of ESTIMATE_FIELDS) setValue(field, settled[field] ?? '');
+      }
+      setFields(textOf(getValues()));
+      setCard(fetched);
+    });
+    const stop = subscribe({
+      formState: { values: true },
+      callback: ({ values }) => setFields(textOf(values)),
+    });
+    return () => {
+      gone = true;
+      stop();
+    };
+  }, [getValues, setValue, subscribe, start]);
+
+  const view = useMemo(() => (card ? priceView(fields, card) : start.view), [card, fields, start.view]);
+  const query = useMemo(() => (card ? estimateQuery(fields, card) : null), [card, fields]);
+  const [estimate, setEstimate] = useState(view.outcome.ok ? view.outcome.value : null);
+  if (view.outcome.ok && view.outcome.value !== estimate) setEstimate(view.outcome.value);
+  useKept(fields, query);
+
+  const problems = view.outcome.ok ? undefined : view.outcome.problem.fields;
+  return {
+    fields,
+    view,
+    estimate,
+    live: card !== null,
+    query,
+    errorOf: (field) => (pressed || fields[field] ? problems?.[field] : undefined),
+    register: (field, onChange) =>
+      register(field, onChange && { onChange: ({ target }: { target: HTMLInputElement }) => onChange(target.value) }),
+    set,
+    turnTo: (changes) => {
+      if (card) set(settleFields({ ...fields, ...changes }, fields.form, card, fields.form ?? ''));
+    },
+    press: () => setPressed(true),
+  };
+}
+
+/** Keeps the inputs in the page's address and in this browser, a moment after the last change. */
+function useKept(fields: EstimateFields, query: string | null) {
+  useEffect(() => {
+    if (query === null) return;
+    const timer = setTimeout(() => {
+      window.history.replaceState(window.history.state, '', `${window.location.pathname}${query && `?${query}`}`);
+      keepDraft({ estimate: fields });
+    }, 250);
+    return () => clearTimeout(timer);
+  }, [fields, query]);
+}
