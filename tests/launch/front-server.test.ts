@@ -40,6 +40,8 @@ const pages: PageHandler = (req, res, next) => {
   } else if (path === '/api/who') {
     res.writeHead(200, { 'content-type': 'application/json' });
     res.end(JSON.stringify({ address: req.headers['x-forwarded-for'], host: req.headers['x-forwarded-host'] ?? null }));
+  } else if (path === '/404') {
+    res.writeHead(404, { 'content-type': 'text/html' }).end('<title>Nothing here</title>');
   } else if (path === '/api/slow') {
     setTimeout(() => res.writeHead(200, { 'content-type': 'text/plain' }).end('done'), 300);
   } else if (path?.startsWith('/api/')) {
@@ -116,10 +118,12 @@ describe('a built page', () => {
     expect((await ask('/forms')).headers['cache-control']).toBe('no-cache');
   });
 
-  it('that no page knows is not found', async () => {
+  it('that nobody made is answered by the page that says so, and at an endpoint in JSON', async () => {
     const answer = await ask('/nothing');
-    expect(answer.status).toBe(404);
-    expect(JSON.parse(answer.body.toString()).problem.message).toBe('There is nothing at this address.');
+    expect([answer.status, answer.body.toString()]).toEqual([404, '<title>Nothing here</title>']);
+    const endpoint = await ask('/elsewhere', { method: 'POST', headers: { 'content-length': '0' } });
+    expect(endpoint.status).toBe(404);
+    expect(JSON.parse(endpoint.body.toString()).problem.message).toBe('There is nothing at this address.');
   });
 });
 

@@ -58,8 +58,13 @@ export function createFrontServer(config: Config, log: Logger, staticFolder: str
       FILE_HEADER,
       (file) => deliverFile(req, res, config.dataFolder, file, (err) => log.warn({ err }, 'a file was not delivered')),
     );
-    const refuseUnknown = () => refuse(res, nothingHere, withPolicy('text/plain'));
-    void pages(req, res, () => refuse(res, nothingHere, withPolicy('application/json')));
+    const refuseUnknown = () => refuse(res, nothingHere, withPolicy('application/json'));
+    void pages(req, res, () => {
+      if (!isRead(req) || path.startsWith('/api/')) return refuseUnknown();
+      // In middleware mode Astro leaves an unknown address to us; its page for that answers under its own address only.
+      req.url = '/404';
+      void pages(req, res, refuseUnknown);
+    });
   }
 
   const server = createServer((req, res) => {
