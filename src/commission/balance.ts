@@ -33,6 +33,8 @@ export interface Balance {
   receivedMinor: number;
   /** Money received that fits no stage; the owner's tray says why. */
   unmatchedMinor: number;
+  /** Money received in currencies that were not agreed; it fits no stage either. */
+  foreign: { currency: string; minor: number }[];
   toComeMinor: number;
   dueMinor: number;
   overdueMinor: number;
@@ -53,27 +55,35 @@ export function balanceOf(
   const list = [...stages]
     .sort((a, b) => a.position - b.position)
     .map((stage) => stageBalance(stage, moved, pending.has(stage.id), now));
-  const known = new Set(list.map((stage) => stage.id));
+  const currency = list[0]?.currency ?? ledger[0]?.currency ?? 'GBP';
+  const fits = new Map(list.map((stage) => [stage.id, stage.currency]));
+  const stray = moved.filter((line) => !line.stagePaymentId || fits.get(line.stagePaymentId) !== line.currency);
   const sum = (numbers: number[]) => numbers.reduce((total, each) => total + each, 0);
   return {
     stages: list,
-    currency: list[0]?.currency ?? ledger[0]?.currency ?? 'GBP',
+    currency,
     agreedMinor: sum(list.map((stage) => stage.grossMinor)),
     receivedMinor: sum(list.map((stage) => stage.paidMinor)),
-    unmatchedMinor: sum(
-      moved.filter((line) => !line.stagePaymentId || !known.has(line.stagePaymentId)).map((l) => l.amountMinor),
-    ),
+    unmatchedMinor: sum(stray.filter((line) => line.currency === currency).map((line) => line.amountMinor)),
+    foreign: byCurrency(stray.filter((line) => line.currency !== currency)),
     toComeMinor: sum(list.map((stage) => stage.owedMinor)),
     dueMinor: sum(list.filter((stage) => stage.state === 'due' || stage.state === 'overdue').map((s) => s.owedMinor)),
     overdueMinor: sum(list.filter((stage) => stage.state === 'overdue').map((stage) => stage.owedMinor)),
   };
 }
 
+function byCurrency(lines: readonly LedgerLine[]): Balance['foreign'] {
+  const sums = new Map<string, number>();
+  for (const { currency, amountMinor } of lines) sums.set(currency, (sums.get(currency) ?? 0) + amountMinor);
+  return [...sums].map(([currency, minor]) => ({ currency, minor }));
+}
+
 function stageBalance(stage: AgreedStage, moved: LedgerLine[], pending: boolean, now: Date): StageBalance {
-  const paidMinor = moved
-    .filter((line) => line.stagePaymentId === stage.id && line.currency === stage.currency)
-    .reduce((total, line) => total + line.amountMinor, 0);
-  const owedMinor = Math.max(0, stage.grossMinor - paidMinor);
+  const own = moved.filter((line) => line.stagePaymentId === stage.id && line.currency === stage.currency);
+  const sum = (lines: LedgerLine[]) => lines.reduce((total, line) => total + line.amountMinor, 0);
+  const paidMinor = sum(own);
+  // What the studio gave back is not owed again.
+  const owedMinor = Math.max(0, stage.grossMinor - sum(own.filter((line) => line.kind !== 'refund')));
   const state: StageState =
     owedMinor === 0
       ? 'paid'
