@@ -122,7 +122,9 @@ function applyLines(before: readonly CostLine[], typed: readonly DeskLine[]): Co
   return typed.map(({ id, drop: _drop, zeroReason, ...figures }, index) => {
     const known = before.find((line) => line.id === id);
     const base = known ?? costLine({ id: freeId(taken, index), label: figures.label, group: figures.group });
-    const line = { ...base, ...figures };
+    const isSameWork = base.minutes === figures.minutes && base.materialsMinor === figures.materialsMinor;
+    // What an amount was reckoned from is no longer true once another amount is typed over it.
+    const line = { ...base, ...figures, driver: isSameWork ? base.driver : '' };
     return { ...line, zeroReason: unitCostMinor(line) === 0 ? (zeroReason ?? null) : null };
   });
 }

@@ -30,7 +30,7 @@ export function DeskPrice({ form, initial, errors, priced }: DeskPriceProps) {
           { value: 'own', name: 'My own', note: 'With a reason, kept with the quote' },
         ]}
       />
-      <div className="own-price grid gap-4">
+      <div className="own-price">
         <Field
           label="My own price"
           name="ownMinor"

@@ -115,10 +115,8 @@ function DeskRowMore({ form, row, index, known, errors, isOpen }: Omit<DeskRowPr
   const at = `lines.${index}` as const;
   const isNew = row.id === '';
   return (
-    <details open={isOpen || isNew ? true : undefined}>
-      <summary>
-        {known?.driver || (isNew ? 'Name it and say where it belongs' : 'Name, place, reason for zero')}
-      </summary>
+    <details open={isOpen ? true : undefined}>
+      <summary>{isNew ? 'Write it in' : known?.minutes === 0 && known.driver ? known.driver : 'More'}</summary>
       <input type="hidden" defaultValue={row.id} {...form.register(`${at}.id`)} />
       <div className="mt-1 grid gap-2 font-normal">
         <label className="grid gap-1">
