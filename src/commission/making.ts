@@ -50,6 +50,11 @@ export function stageAfterScrap(route: readonly PieceStage[]): PieceStage {
   return route.includes('pattern') ? 'pattern' : 'waiting';
 }
 
+/** Whether `stage` lies at or behind `at` on this route. */
+export function hasReached(route: readonly PieceStage[], at: PieceStage, stage: PieceStage): boolean {
+  return stage === 'waiting' || (route.includes(stage) && route.indexOf(at) >= route.indexOf(stage));
+}
+
 /** The least advanced of several pieces: what the customer is shown, with how many have passed it. */
 export function leastAdvanced(stages: readonly PieceStage[]): { stage: PieceStage; beyond: number } {
   const order = stages.map((stage) => PIECE_STAGES.indexOf(stage));

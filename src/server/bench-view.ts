@@ -78,6 +78,11 @@ export async function readBench(
   const { db } = services;
   const commission = found.value;
   const all = await readPieces(db, commission.id);
+  if (all.length === 0)
+    return refuse(
+      'not-found',
+      'This commission has not come to the bench yet; it does once its first payment is booked.',
+    );
   const numbers = new Map(all.map((piece) => [piece.id, piece.number]));
   const gate = await latestGate(db, commission.id, 'A');
   const pictures = await db

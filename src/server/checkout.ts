@@ -47,7 +47,10 @@ export async function startCheckout(
   if (!found.ok) return found;
   const commission = found.value;
   if (ENDED.has(commission.deal))
-    return refuse('conflict', `This commission is ${commission.deal}, so nothing is owed on it. Write to us to take it up.`);
+    return refuse(
+      'conflict',
+      `This commission is ${commission.deal}, so nothing is owed on it. Write to us to take it up.`,
+    );
   const standing = await readStanding(services, commission.id, input.stage);
   if (!standing)
     return refuse(

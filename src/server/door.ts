@@ -70,6 +70,11 @@ async function readRaw({ request, url }: DoorContext): Promise<Outcome<Record<st
   }
 }
 
+/** Keeps the text of a body that was read elsewhere (one with a file in it), so that a refusal gives it back. */
+export function rememberTyped(request: Request, values: Record<string, string>): void {
+  READ_TWICE.set(request, values);
+}
+
 function fromForm(form: FormData): Record<string, unknown> {
   const values: Record<string, unknown> = {};
   for (const name of new Set(form.keys())) {

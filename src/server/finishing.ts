@@ -6,21 +6,17 @@ import type { Dispatch } from '../commission/work-done';
 import { findCommission, lockCommission, type CommissionRow } from './commissions';
 import type { Transaction } from './db/client';
 import { commissions } from './db/schema/commissions';
-import { stagePayments } from './db/schema/quotes';
 import { moveDeal } from './history';
-import { acceptedStages, readBalance } from './ledger';
+import { callInStages, readBalance } from './ledger';
 import { newestPictures } from './making-mails';
 import { queueMail } from './outbox';
 import { readPieces, type PieceRow } from './pieces';
 import { acceptedDraft } from './promise';
+import { dayAfter } from './promised-days';
 import type { Services } from './services';
 
 const BALANCE_DAYS = 14;
 const LOOK_DAYS = 14;
-
-function dayAfter(at: Date, days: number): string {
-  return new Date(at.getTime() + days * 86_400_000).toISOString().slice(0, 10);
-}
 
 /** T31: every piece has passed inspection; the balance falls due and the customer sees the final photos. */
 export async function finishCommission(
@@ -54,19 +50,10 @@ export async function finishCommission(
       at: now,
     });
     if (!moved.ok) return moved;
-    await callInBalance(tx, commission, now);
+    await callInStages(tx, commission.id, ['gate-a', 'before-dispatch'], now);
     await queueFinishedMail(services, tx, commission, all);
     return done({ deal: moved.value });
   });
-}
-
-async function callInBalance(tx: Transaction, commission: CommissionRow, now: Date): Promise<void> {
-  const dueAt = new Date(now.getTime() + BALANCE_DAYS * 86_400_000);
-  for (const stage of await acceptedStages(tx, commission.id)) {
-    if (stage.trigger === 'before-dispatch' && stage.dueAt === null) {
-      await tx.update(stagePayments).set({ dueAt }).where(eq(stagePayments.id, stage.id));
-    }
-  }
 }
 
 async function queueFinishedMail(

@@ -1,5 +1,5 @@
 import { createHash } from 'node:crypto';
-import { and, asc, desc, eq, isNull } from 'drizzle-orm';
+import { and, asc, desc, eq, gt, inArray } from 'drizzle-orm';
 import { uuidv7 } from 'uuidv7';
 import { z } from 'zod';
 import type { Actor } from '../commission/permissions';
@@ -7,10 +7,10 @@ import { done, refuse, type Outcome } from '../commission/problem';
 import { findCommission, lockCommission, type CommissionRow } from './commissions';
 import type { Db, Transaction } from './db/client';
 import { gates, photos, pieces } from './db/schema/making';
-import { stagePayments } from './db/schema/quotes';
 import { queueGateMail, queueGateDecidedMail } from './gate-mails';
 import { recordEvent } from './history';
-import { acceptedStages } from './ledger';
+import { acceptedStages, callInStages } from './ledger';
+import { ENDED } from './payment-misfit';
 import type { Services } from './services';
 
 export type GateRow = typeof gates.$inferSelect;
@@ -23,8 +23,6 @@ export const gateDecisionSchema = z.object({
 });
 export type GateDecision = z.output<typeof gateDecisionSchema>;
 
-const PAY_DAYS = 7;
-
 /** SHA-256 over the photos' own hashes in their order: what an approval binds to. */
 export function photoSetHash(hashes: readonly string[]): string {
   return createHash('sha256').update(hashes.join('\n')).digest('hex');
@@ -36,13 +34,9 @@ export async function openGateA(
   commission: CommissionRow,
   by: { actor: Actor; now: Date },
 ): Promise<void> {
-  const shown = await tx
-    .select({ id: photos.id, sha256: photos.sha256, caption: photos.caption, alt: photos.alt })
-    .from(photos)
-    .where(and(eq(photos.commissionId, commission.id), eq(photos.stage, 'pattern'), eq(photos.shared, true)))
-    .orderBy(asc(photos.takenAt), asc(photos.id));
   const last = await latestGate(tx, commission.id, 'A');
-  if (last?.state === 'open') return;
+  if (last && last.state !== 'changes') return;
+  const shown = await patternPhotos(tx, commission.id, last);
   const round = (last?.round ?? 0) + 1;
   const photoSetSha256 = photoSetHash(shown.map((photo) => photo.sha256));
   await tx.insert(gates).values({
@@ -64,6 +58,39 @@ export async function openGateA(
     data: { photoSetSha256 },
   });
   await queueGateMail(tx, commission, { gate: 'A', round, photos: shown, at: by.now });
+}
+
+/** The pattern's shared photos, oldest first: those taken since changes were asked for, when they were. */
+export async function patternPhotos(tx: Transaction, commissionId: string, last: GateRow | null) {
+  const since = last?.state === 'changes' ? last.decidedAt : null;
+  return tx
+    .select({ id: photos.id, sha256: photos.sha256, caption: photos.caption, alt: photos.alt })
+    .from(photos)
+    .where(
+      and(
+        eq(photos.commissionId, commissionId),
+        eq(photos.stage, 'pattern'),
+        eq(photos.shared, true),
+        since ? gt(photos.createdAt, since) : undefined,
+      ),
+    )
+    .orderBy(asc(photos.takenAt), asc(photos.id));
+}
+
+/** A photo of the pattern added while the customer is asked joins what they look at; an answer on the older set is stale. */
+export async function addToOpenGate(tx: Transaction, commissionId: string, photoId: string): Promise<void> {
+  const gate = await latestGate(tx, commissionId, 'A');
+  if (gate?.state !== 'open') return;
+  const photoIds = [...gate.photoIds, photoId];
+  const rows = await tx
+    .select({ id: photos.id, sha256: photos.sha256 })
+    .from(photos)
+    .where(inArray(photos.id, photoIds));
+  const hashes = photoIds.flatMap((id) => rows.find((row) => row.id === id)?.sha256 ?? []);
+  await tx
+    .update(gates)
+    .set({ photoIds, photoSetSha256: photoSetHash(hashes) })
+    .where(eq(gates.id, gate.id));
 }
 
 /** The newest round of a gate, if it was ever opened. */
@@ -94,13 +121,18 @@ export async function decideGate(
   const now = services.now();
   return services.db.transaction(async (tx) => {
     const commission = await lockCommission(tx, found.value.id);
+    if (ENDED.has(commission.deal))
+      return refuse(
+        'conflict',
+        `This commission is ${commission.deal}, so there is nothing to decide. Write to us to take it up.`,
+      );
     const gate = await latestGate(tx, commission.id, 'A');
     if (!gate) return refuse('conflict', 'There is nothing to look at yet. We write to you when there is.');
     if (gate.photoSetSha256 !== input.photoSet)
       return refuse('stale', 'The pictures have changed since you opened the page. Please look again.');
     const state = input.decision === 'approve' ? 'approved' : 'changes';
     if (gate.state !== 'open') {
-      return gate.state === state
+      return gate.state === state && (state === 'approved' || gate.note === (input.note ?? null))
         ? done({ state })
         : refuse('conflict', 'This was answered already. Write us a message if you have changed your mind.');
     }
@@ -131,14 +163,8 @@ async function afterApproval(
   gate: GateRow,
   now: Date,
 ): Promise<void> {
+  await callInStages(tx, commission.id, ['gate-a'], now);
   const stage = (await acceptedStages(tx, commission.id)).find((each) => each.trigger === 'gate-a');
-  if (stage && stage.dueAt === null) {
-    const dueAt = new Date(now.getTime() + PAY_DAYS * 86_400_000);
-    await tx
-      .update(stagePayments)
-      .set({ dueAt })
-      .where(and(eq(stagePayments.id, stage.id), isNull(stagePayments.dueAt)));
-  }
   await queueGateDecidedMail(services, tx, commission, gate, stage ?? null, now);
 }
 

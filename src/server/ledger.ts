@@ -1,4 +1,4 @@
-import { and, eq, inArray, sql } from 'drizzle-orm';
+import { and, eq, inArray, isNull, sql } from 'drizzle-orm';
 import { uuidv7 } from 'uuidv7';
 import { balanceOf, type Balance } from '../commission/balance';
 import type { Db, Transaction } from './db/client';
@@ -56,6 +56,26 @@ export async function acceptedStages(db: Db, commissionId: string): Promise<Stag
     .where(and(eq(stagePayments.commissionId, commissionId), eq(quotes.state, 'accepted')))
     .orderBy(stagePayments.position);
   return rows.map((row) => row.stage);
+}
+
+const PAY_WITHIN_DAYS = { 'gate-a': 7, 'before-dispatch': 14 } as const;
+
+/** Makes the stages of these triggers due, each after the days it is given; one that is due already keeps its day. */
+export async function callInStages(
+  tx: Transaction,
+  commissionId: string,
+  triggers: readonly (keyof typeof PAY_WITHIN_DAYS)[],
+  at: Date,
+): Promise<void> {
+  for (const stage of await acceptedStages(tx, commissionId)) {
+    const trigger = triggers.find((each) => each === stage.trigger);
+    if (!trigger) continue;
+    const dueAt = new Date(at.getTime() + PAY_WITHIN_DAYS[trigger] * 86_400_000);
+    await tx
+      .update(stagePayments)
+      .set({ dueAt })
+      .where(and(eq(stagePayments.id, stage.id), isNull(stagePayments.dueAt)));
+  }
 }
 
 /** What is paid, due, overdue and to come on one commission at `now`. */

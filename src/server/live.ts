@@ -24,6 +24,8 @@ function wireOf(services: Services): Wire {
  * Calls `listener` each time the history of this commission grows. One database connection serves all
  * listeners of the process; when it breaks it is opened again and everybody is woken once, since
  * something may have been missed. Returns how to stop.
+ *
+ * @throws when the database cannot be reached at first
  */
 export async function watchCommission(
   services: Services,
@@ -34,12 +36,18 @@ export async function watchCommission(
   const set = wire.listeners.get(commissionId) ?? new Set();
   set.add(listener);
   wire.listeners.set(commissionId, set);
-  await openWire(services, wire);
-  return () => {
+  const stop = () => {
     set.delete(listener);
     if (set.size === 0 && wire.listeners.get(commissionId) === set) wire.listeners.delete(commissionId);
     if (wire.listeners.size === 0) closeWire(services, wire);
   };
+  try {
+    await openWire(services, wire);
+  } catch (error) {
+    stop();
+    throw error;
+  }
+  return stop;
 }
 
 async function openWire(services: Services, wire: Wire): Promise<void> {
@@ -63,6 +71,8 @@ async function connect(services: Services, wire: Wire): Promise<void> {
   await client.connect();
   await client.query('listen commission');
   wire.client = client;
+  // Everybody may have left while it was opening.
+  if (wire.listeners.size === 0) closeWire(services, wire);
 }
 
 function reopenLater(services: Services, wire: Wire): void {

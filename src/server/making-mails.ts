@@ -1,4 +1,4 @@
-import { and, desc, eq } from 'drizzle-orm';
+import { and, desc, eq, isNull, ne, or } from 'drizzle-orm';
 import { nextStage, type PieceStage, type ScrapCause } from '../commission/making';
 import type { CommissionRow } from './commissions';
 import type { Transaction } from './db/client';
@@ -108,12 +108,20 @@ export async function queueScrapMail(
   });
 }
 
-/** The newest shared photos of one stage, for a letter. */
+/** The newest shared photos of one stage, for a letter; those of a casting that was scrapped are told by its own letter. */
 export async function newestPictures(tx: Transaction, commissionId: string, stage: string, most: number) {
   const rows = await tx
     .select({ photoId: photos.id, caption: photos.caption, alt: photos.alt })
     .from(photos)
-    .where(and(eq(photos.commissionId, commissionId), eq(photos.stage, stage), eq(photos.shared, true)))
+    .leftJoin(attempts, eq(attempts.id, photos.attemptId))
+    .where(
+      and(
+        eq(photos.commissionId, commissionId),
+        eq(photos.stage, stage),
+        eq(photos.shared, true),
+        or(isNull(attempts.result), ne(attempts.result, 'scrapped')),
+      ),
+    )
     .orderBy(desc(photos.takenAt))
     .limit(most);
   return rows;

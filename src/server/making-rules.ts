@@ -1,13 +1,20 @@
-import { and, desc, eq } from 'drizzle-orm';
+import { and, eq } from 'drizzle-orm';
+import type { DealState } from '../commission/deal';
 import { nextStage, STAGE_ACTS } from '../commission/making';
 import type { Role } from '../commission/permissions';
 import { done, refuse, type Outcome } from '../commission/problem';
 import type { StageDone } from '../commission/work-done';
 import type { CommissionRow } from './commissions';
 import type { Transaction } from './db/client';
-import { gates, photos } from './db/schema/making';
+import { photos } from './db/schema/making';
+import { latestGate, patternPhotos } from './gates';
 import { readBalance } from './ledger';
 import type { PieceRow } from './pieces';
+
+/** States of the deal in which pieces go on from stage to stage. */
+export const IN_WORK: readonly DealState[] = ['booked', 'making', 'rework'];
+
+export const NOT_AT_THE_BENCH = 'This commission is not at the bench just now. Reload the page to see where it stands.';
 
 /** Whether a piece may take this step now; the sentence says what is missing. `repeat` is a second press of the same step. */
 export async function checkStep(
@@ -18,10 +25,9 @@ export async function checkStep(
   by: { role: Role; now: Date },
 ): Promise<Outcome<'step' | 'repeat'>> {
   if (piece.stage === input.to) return done('repeat');
-  const deals = input.to === 'packed' ? ['booked', 'making', 'rework', 'finished'] : ['booked', 'making', 'rework'];
-  if (!deals.includes(commission.deal)) {
-    return refuse('conflict', 'This commission is not at the bench. Reload the page to see where it stands.');
-  }
+  // Packing is the one step left once the customer has been told that the piece is finished.
+  const states: readonly DealState[] = input.to === 'packed' ? [...IN_WORK, 'finished'] : IN_WORK;
+  if (!states.includes(commission.deal)) return refuse('conflict', NOT_AT_THE_BENCH);
   if (piece.stage !== input.from || nextStage(piece.route, piece.stage) !== input.to) {
     const expected = nextStage(piece.route, piece.stage);
     return refuse(
@@ -29,46 +35,34 @@ export async function checkStep(
       `Piece ${piece.number} has moved on. Its next step is: ${expected ? STAGE_ACTS[expected].toLowerCase() : 'nothing, it is packed'}. Reload the page.`,
     );
   }
-  if (input.to === 'pattern')
-    return needPhotos(
-      tx,
-      commission,
-      'pattern',
-      'Take at least one photo of the pattern with a scale before you send it to the customer.',
-    );
-  if (input.to === 'mould') return checkMould(tx, commission, piece, by);
+  if (input.to === 'pattern') return checkPattern(tx, commission);
+  if (input.to === 'mould') return checkMould(tx, commission, piece, input, by);
   if (input.to === 'inspected') return checkInspection(tx, commission, piece, input);
   if (input.to === 'packed') return checkPacking(commission);
   return done('step');
 }
 
-async function needPhotos(
-  tx: Transaction,
-  commission: CommissionRow,
-  stage: string,
-  sentence: string,
-): Promise<Outcome<'step'>> {
-  const [photo] = await tx
-    .select({ id: photos.id })
-    .from(photos)
-    .where(and(eq(photos.commissionId, commission.id), eq(photos.stage, stage)))
-    .limit(1);
-  return photo ? done('step') : refuse('conflict', sentence);
+async function checkPattern(tx: Transaction, commission: CommissionRow): Promise<Outcome<'step'>> {
+  const last = await latestGate(tx, commission.id, 'A');
+  const shown = await patternPhotos(tx, commission.id, last);
+  if (shown.length > 0) return done('step');
+  return refuse(
+    'conflict',
+    last?.state === 'changes'
+      ? 'Take at least one photo of the changed pattern before you send it to the customer again.'
+      : 'Take at least one photo of the pattern with a scale before you send it to the customer.',
+  );
 }
 
 async function checkMould(
   tx: Transaction,
   commission: CommissionRow,
   piece: PieceRow,
+  input: StageDone,
   by: { role: Role; now: Date },
 ): Promise<Outcome<'step'>> {
   if (piece.route.includes('pattern')) {
-    const [gate] = await tx
-      .select()
-      .from(gates)
-      .where(and(eq(gates.commissionId, commission.id), eq(gates.gate, 'A')))
-      .orderBy(desc(gates.round))
-      .limit(1);
+    const gate = await latestGate(tx, commission.id, 'A');
     if (gate?.state !== 'approved') {
       return refuse(
         'conflict',
@@ -79,13 +73,16 @@ async function checkMould(
   const owed = (await readBalance(tx, commission.id, by.now)).stages.find(
     (stage) => stage.dueAt !== null && stage.owedMinor > 0,
   );
-  // The owner decides on credit, so the owner's own press goes through; the history names who pressed.
-  if (owed && by.role !== 'owner')
+  if (!owed) return done('step');
+  if (by.role !== 'owner')
     return refuse(
       'conflict',
-      `A stage payment that covers this step is still open. Ask the owner before you make the mould.`,
+      'A stage payment that covers this step is still open. Ask the owner before you make the mould.',
     );
-  return done('step');
+  // The owner decides on credit, with a reason that the history keeps.
+  if (input.note) return done('step');
+  const why = 'A stage payment is still open. Say in the note why the mould is made before it has come.';
+  return refuse('invalid', why, { note: why });
 }
 
 async function checkInspection(
@@ -110,12 +107,14 @@ async function checkInspection(
       },
     );
   }
-  return needPhotos(
-    tx,
-    commission,
-    'inspected',
-    'Take at least one photo of the finished piece before it passes inspection.',
-  );
+  const [photo] = await tx
+    .select({ id: photos.id })
+    .from(photos)
+    .where(and(eq(photos.commissionId, commission.id), eq(photos.stage, 'inspected')))
+    .limit(1);
+  return photo
+    ? done('step')
+    : refuse('conflict', 'Take at least one photo of the finished piece before it passes inspection.');
 }
 
 function checkPacking(commission: CommissionRow): Outcome<'step'> {

@@ -1,12 +1,13 @@
 import { and, desc, eq, isNull } from 'drizzle-orm';
 import { uuidv7 } from 'uuidv7';
-import { STAGE_ACTS, type PieceStage } from '../commission/making';
+import { hasReached, STAGE_ACTS, type PieceStage } from '../commission/making';
 import type { Actor } from '../commission/permissions';
 import { done, refuse, type Outcome } from '../commission/problem';
 import type { StageDone } from '../commission/work-done';
 import { findCommission, lockCommission, type CommissionRow } from './commissions';
 import type { Transaction } from './db/client';
 import { attempts, pieces } from './db/schema/making';
+import { findEntry } from './entries';
 import { openGateA } from './gates';
 import { moveDeal, recordEvent } from './history';
 import { checkStep } from './making-rules';
@@ -22,7 +23,8 @@ export interface StepDone {
 
 /**
  * One piece reaches its next stage (T14, T15, T19 to T22, T27, T30). The rules are asked inside the
- * transaction; a second press of the same step answers like the first and writes nothing.
+ * transaction; a second press of the same step answers like the first and writes nothing. All pieces of a
+ * commission come from one pattern, so they reach that stage together.
  */
 export async function reachStage(
   services: Services,
@@ -38,12 +40,15 @@ export async function reachStage(
     const all = await readPieces(tx, commission.id);
     const piece = all.find((each) => each.number === input.piece);
     if (!piece) return refuse('not-found', 'This commission has no piece of that number.');
+    if (await findEntry(tx, commission.id, `stage-${input.to}`, input.clientId))
+      return done({ piece: piece.number, stage: input.to });
     const rule = await checkStep(tx, commission, piece, input, { role: actor!.role, now });
     if (!rule.ok) return rule;
     if (rule.value === 'repeat') return done({ piece: piece.number, stage: piece.stage });
     await startMaking(services, tx, commission, actor);
-    await writeStep(tx, commission, piece, input, { actor, now });
-    const after = all.map((each) => (each.id === piece.id ? { ...each, stage: input.to } : each));
+    const moved = input.to === 'pattern' ? all.filter((each) => each.stage === 'waiting') : [piece];
+    await writeStep(tx, commission, moved, input, { actor, now });
+    const after = all.map((each) => (moved.includes(each) ? { ...each, stage: input.to } : each));
     await tellCustomer(services, tx, commission, after, input.to);
     return done({ piece: piece.number, stage: input.to });
   });
@@ -58,7 +63,7 @@ export async function startMaking(
 ): Promise<void> {
   if (commission.deal !== 'booked') return;
   const at = services.now();
-  await moveDeal(tx, commission, {
+  const moved = await moveDeal(tx, commission, {
     move: 'T14',
     mover: actor?.role === 'owner' ? 'owner' : 'maker',
     actor,
@@ -66,29 +71,35 @@ export async function startMaking(
     public: true,
     at,
   });
+  if (!moved.ok) throw new Error(`the making of ${commission.ref} could not start: ${moved.problem.message}`);
   await queueStartMail(services, tx, commission);
 }
 
 async function writeStep(
   tx: Transaction,
   commission: CommissionRow,
-  piece: PieceRow,
+  moved: PieceRow[],
   input: StageDone,
   by: { actor: Actor; now: Date },
 ): Promise<void> {
-  await tx
-    .update(pieces)
-    .set({ stage: input.to, updatedAt: by.now, ...(input.to === 'inspected' ? { measured: measuredOf(input) } : {}) })
-    .where(eq(pieces.id, piece.id));
+  const [piece] = moved;
+  if (!piece) throw new Error('a step without a piece');
+  for (const each of moved) {
+    await tx
+      .update(pieces)
+      .set({ stage: input.to, updatedAt: by.now, ...(input.to === 'inspected' ? { measured: measuredOf(input) } : {}) })
+      .where(eq(pieces.id, each.id));
+  }
   await writeAttempt(tx, commission, piece, input, by);
   if (input.to === 'pattern') await openGateA(tx, commission, by);
+  const which = input.to === 'pattern' || commission.pieces === 1 ? '' : `: piece ${piece.number}`;
   await recordEvent(tx, {
     commissionId: commission.id,
     code: `stage-${input.to}`,
     actor: by.actor,
     from: piece.stage,
     to: input.to,
-    sentence: `${STAGE_ACTS[input.to]}: piece ${piece.number}.`,
+    sentence: `${STAGE_ACTS[input.to]}${which}.`,
     public: true,
     at: by.now,
     data: { piece: piece.number, clientId: input.clientId, ...(input.note ? { note: input.note } : {}) },
@@ -167,7 +178,7 @@ async function tellCustomer(
 ): Promise<void> {
   if (!TOLD.has(stage)) return;
   const concerned = all.filter((piece) => piece.route.includes(stage));
-  const reached = concerned.filter((piece) => piece.route.indexOf(piece.stage) >= piece.route.indexOf(stage));
+  const reached = concerned.filter((piece) => hasReached(piece.route, piece.stage, stage));
   if (reached.length === concerned.length)
     await queueProgressMail(services, tx, commission, { stage, pieces: concerned });
 }

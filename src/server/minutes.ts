@@ -1,6 +1,7 @@
 import { and, eq, sum } from 'drizzle-orm';
 import { uuidv7 } from 'uuidv7';
 import type { z } from 'zod';
+import type { DealState } from '../commission/deal';
 import type { Actor } from '../commission/permissions';
 import { done, refuse, type Outcome } from '../commission/problem';
 import type { MinutesDone, timerSchema } from '../commission/work-done';
@@ -9,8 +10,13 @@ import type { Db } from './db/client';
 import { minutesLog, timers } from './db/schema/making';
 import { recordEvent } from './history';
 import { startMaking } from './making';
+import { IN_WORK } from './making-rules';
 import { readPieces } from './pieces';
 import type { Services } from './services';
+
+/** States of the deal in which somebody may be working on it: packing and a last look come after it is finished. */
+const TIMED: readonly DealState[] = [...IN_WORK, 'finished'];
+const NO_TIME = 'Time is logged only while a commission is at the bench. Ask the owner to take it up again first.';
 
 /** Minutes logged on one operation of a commission so far. */
 export interface MinutesTotal {
@@ -30,19 +36,19 @@ export async function logMinutes(
   const now = services.now();
   return services.db.transaction(async (tx) => {
     const commission = await lockCommission(tx, found.value.id);
-    if (!['booked', 'making', 'finished', 'rework'].includes(commission.deal)) {
-      return refuse('conflict', 'Time is logged only while a commission is at the bench.');
-    }
-    const pieceId = input.piece
-      ? (await readPieces(tx, commission.id)).find((piece) => piece.number === input.piece)?.id
-      : undefined;
+    const [known] = await tx.select().from(minutesLog).where(eq(minutesLog.clientId, input.clientId));
+    if (known)
+      return done({ operation: known.operation, minutes: await minutesOn(tx, known.commissionId, known.operation) });
+    if (!TIMED.includes(commission.deal)) return refuse('conflict', NO_TIME);
+    const piece = (await readPieces(tx, commission.id)).find((each) => each.number === input.piece);
+    if (input.piece && !piece) return refuse('not-found', 'This commission has no piece of that number.');
     const written = await tx
       .insert(minutesLog)
       .values({
         id: uuidv7(),
         clientId: input.clientId,
         commissionId: commission.id,
-        pieceId: pieceId ?? null,
+        pieceId: piece?.id ?? null,
         operation: input.operation,
         minutes: input.minutes,
         by: actor!.id,
@@ -86,6 +92,7 @@ export async function turnTimer(
   const now = services.now();
   const mine = and(eq(timers.commissionId, found.value.id), eq(timers.by, actor!.id));
   if (input.action === 'start') {
+    if (!TIMED.includes(found.value.deal)) return refuse('conflict', NO_TIME);
     await services.db
       .insert(timers)
       .values({ id: uuidv7(), commissionId: found.value.id, by: actor!.id, operation: input.operation, startedAt: now })
@@ -103,7 +110,7 @@ export async function turnTimer(
     );
   }
   const logged = await logMinutes(services, actor, ref, { clientId: timer.id, operation: timer.operation, minutes });
-  if (!logged.ok) return logged;
   await services.db.delete(timers).where(eq(timers.id, timer.id));
+  if (!logged.ok) return logged;
   return done({ running: false, minutes });
 }

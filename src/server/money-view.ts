@@ -84,21 +84,22 @@ export async function readMoney(services: Services, actor: Actor): Promise<Outco
 /** Adds up lines by currency: held on work not yet delivered, still to come on booked work, due and overdue of that. */
 export function totalsOf(lines: readonly Pick<MoneyLine, 'deal' | 'balance'>[]): MoneyTotals[] {
   const byCurrency = new Map<string, MoneyTotals>();
+  const sumOf = (currency: string) => {
+    const sum = byCurrency.get(currency) ?? { currency, heldMinor: 0, toComeMinor: 0, dueMinor: 0, overdueMinor: 0 };
+    byCurrency.set(currency, sum);
+    return sum;
+  };
   for (const { deal, balance } of lines) {
-    const sum = byCurrency.get(balance.currency) ?? {
-      currency: balance.currency,
-      heldMinor: 0,
-      toComeMinor: 0,
-      dueMinor: 0,
-      overdueMinor: 0,
-    };
-    if (HELD.includes(deal)) sum.heldMinor += balance.receivedMinor + balance.unmatchedMinor;
+    const sum = sumOf(balance.currency);
+    if (HELD.includes(deal)) {
+      sum.heldMinor += balance.receivedMinor + balance.unmatchedMinor;
+      for (const { currency, minor } of balance.foreign) sumOf(currency).heldMinor += minor;
+    }
     if (TO_COME.includes(deal)) {
       sum.toComeMinor += balance.toComeMinor;
       sum.dueMinor += balance.dueMinor;
       sum.overdueMinor += balance.overdueMinor;
     }
-    byCurrency.set(balance.currency, sum);
   }
   return [...byCurrency.values()].sort((a, b) => b.currency.localeCompare(a.currency));
 }

@@ -58,5 +58,6 @@ function nextSentence(commission: CommissionRow, moreToCome: boolean): string {
     return 'We write again when your piece is about to be started. You need do nothing until then.';
   if (commission.deal === 'finished' && !moreToCome)
     return 'Everything is paid. We pack your piece and write when the carrier has it.';
+  if (commission.deal === 'held') return 'Your commission stays on hold as agreed; nothing else changes.';
   return 'The work goes on; your commission’s page shows each stage with its photos.';
 }

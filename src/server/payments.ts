@@ -1,20 +1,24 @@
-import { and, eq } from 'drizzle-orm';
+import { eq, sql } from 'drizzle-orm';
 import type Stripe from 'stripe';
-import { uuidv7 } from 'uuidv7';
-import type { Problem } from '../commission/problem';
+import { z } from 'zod';
+import { keepSession, moveSession } from './checkout-sessions';
 import { lockCommission, type CommissionRow } from './commissions';
 import type { Transaction } from './db/client';
-import { tray } from './db/schema/commissions';
-import { checkoutSessions, quotes, stagePayments, stripeEvents } from './db/schema/quotes';
+import { commissions, tray } from './db/schema/commissions';
+import { checkoutSessions, stripeEvents } from './db/schema/quotes';
 import { moveDeal, recordEvent } from './history';
-import { bookEntry, readBalance, type LedgerEntry } from './ledger';
+import { bookEntry, callInStages, type LedgerEntry } from './ledger';
 import { queueReceiptMail } from './payment-mails';
+import { findMisfit, putInTray } from './payment-misfit';
 import { openPieces } from './pieces';
 import { writePromise } from './promise';
 import type { Services } from './services';
+import { askForSession } from './stripe/provider';
 
 /** What became of an event; kept beside its id. */
 export type EventOutcome = 'booked' | 'pending' | 'expired' | 'failed' | 'known' | 'unmatched' | 'ignored';
+
+type Session = Stripe.Checkout.Session;
 
 const SESSION_EVENTS = new Set([
   'checkout.session.completed',
@@ -33,21 +37,12 @@ const SESSION_EVENTS = new Set([
 export async function recordStripeEvent(services: Services, event: Stripe.Event): Promise<EventOutcome> {
   const [known] = await services.db.select().from(stripeEvents).where(eq(stripeEvents.id, event.id));
   if (known) return 'known';
-  const object = event.data.object as { id?: string };
-  const session =
-    SESSION_EVENTS.has(event.type) && object.id
-      ? await services.stripe.checkout.sessions.retrieve(object.id, { expand: ['payment_intent.latest_charge'] })
-      : null;
+  const objectId = (event.data.object as { id?: string }).id ?? '';
+  const session = SESSION_EVENTS.has(event.type) ? await askForSession(services, objectId) : null;
   return services.db.transaction(async (tx) => {
     const claimed = await tx
       .insert(stripeEvents)
-      .values({
-        id: event.id,
-        type: event.type,
-        objectId: object.id ?? '',
-        outcome: 'ignored',
-        receivedAt: services.now(),
-      })
+      .values({ id: event.id, type: event.type, objectId, outcome: 'ignored', receivedAt: services.now() })
       .onConflictDoNothing()
       .returning({ id: stripeEvents.id });
     if (claimed.length === 0) return 'known';
@@ -59,66 +54,63 @@ export async function recordStripeEvent(services: Services, event: Stripe.Event)
 
 /** Asks the provider about one session and takes in what it says; used when a webhook may be lost. */
 export async function reconcileSession(services: Services, sessionId: string): Promise<EventOutcome> {
-  const session = await services.stripe.checkout.sessions.retrieve(sessionId, {
-    expand: ['payment_intent.latest_charge'],
+  const session = await askForSession(services, sessionId);
+  return services.db.transaction(async (tx) => {
+    if (session) return applySession(services, tx, session);
+    // A page the provider does not know can never be paid.
+    return (await moveSession(tx, sessionId, 'expired')) ? 'expired' : 'ignored';
   });
-  return services.db.transaction((tx) => applySession(services, tx, session));
 }
 
-async function applySession(
-  services: Services,
-  tx: Transaction,
-  session: Stripe.Checkout.Session,
-): Promise<EventOutcome> {
-  const [row] = await tx.select().from(checkoutSessions).where(eq(checkoutSessions.id, session.id));
-  const commissionId = row?.commissionId ?? session.metadata?.['commission'];
-  const stageId = row?.stagePaymentId ?? session.metadata?.['stage'];
-  if (!commissionId || !stageId) return 'ignored';
-  const commission = await lockCommission(tx, commissionId);
-  await keepSession(services, tx, session, commission.id, stageId);
-  if (session.payment_status === 'paid') return bookSession(services, tx, session, commission, stageId);
+async function applySession(services: Services, tx: Transaction, session: Session): Promise<EventOutcome> {
+  const named = await findNamed(tx, session);
+  if (!named) return session.payment_status === 'paid' ? layAside(services, tx, session) : 'ignored';
+  const commission = await lockCommission(tx, named.commissionId);
+  await keepSession(tx, session, { ...named, at: services.now() });
+  if (session.payment_status === 'paid') return bookSession(services, tx, session, commission, named.stagePaymentId);
   if (session.status === 'complete') return settleDelayed(services, tx, session, commission);
-  if (session.status === 'expired') {
-    await setState(tx, session.id, 'expired');
-    return 'expired';
-  }
-  return 'ignored';
+  if (session.status !== 'expired') return 'ignored';
+  await moveSession(tx, session.id, 'expired');
+  return 'expired';
 }
 
-async function keepSession(
-  services: Services,
-  tx: Transaction,
-  session: Stripe.Checkout.Session,
-  commissionId: string,
-  stageId: string,
-) {
-  const [stage] = await tx.select().from(stagePayments).where(eq(stagePayments.id, stageId));
-  if (!stage) return;
-  await tx
-    .insert(checkoutSessions)
-    .values({
-      id: session.id,
-      commissionId,
-      stagePaymentId: stageId,
-      quoteId: stage.quoteId,
-      amountMinor: session.amount_total ?? 0,
-      currency: (session.currency ?? '').toUpperCase(),
-      url: session.url ?? '',
-      createdAt: services.now(),
-      expiresAt: new Date(session.expires_at * 1000),
-    })
-    .onConflictDoNothing();
+const metadataSchema = z.object({ commission: z.uuid(), stage: z.uuid() });
+
+/** The commission and stage a session was made for: by our own row, else by what was written on it when it was made. */
+async function findNamed(tx: Transaction, session: Session) {
+  const [row] = await tx.select().from(checkoutSessions).where(eq(checkoutSessions.id, session.id));
+  if (row) return { commissionId: row.commissionId, stagePaymentId: row.stagePaymentId };
+  const written = metadataSchema.safeParse(session.metadata);
+  if (!written.success) return null;
+  const { commission, stage } = written.data;
+  const [found] = await tx.select({ id: commissions.id }).from(commissions).where(eq(commissions.id, commission));
+  return found ? { commissionId: commission, stagePaymentId: stage } : null;
+}
+
+/** Money on a session that names no commission of ours goes before the owner, once. */
+async function layAside(services: Services, tx: Transaction, session: Session): Promise<EventOutcome> {
+  await tx.execute(sql`select pg_advisory_xact_lock(hashtext(${session.id}))`);
+  const items = await tx
+    .select({ id: tray.id })
+    .from(tray)
+    .where(sql`${tray.data} ->> 'session' = ${session.id}`);
+  if (items.length > 0) return 'known';
+  const message =
+    'Money came in on a payment page that names no commission of ours. Look it up at Stripe, then refund it or book it by hand.';
+  const data = { session: session.id, amountMinor: session.amount_total, currency: session.currency?.toUpperCase() };
+  await putInTray(tx, null, { code: 'conflict', message }, data, services.now());
+  return 'unmatched';
 }
 
 async function settleDelayed(
   services: Services,
   tx: Transaction,
-  session: Stripe.Checkout.Session,
+  session: Session,
   commission: CommissionRow,
 ): Promise<EventOutcome> {
   const intent = typeof session.payment_intent === 'object' ? session.payment_intent : null;
   const failed = intent?.status === 'requires_payment_method' || intent?.status === 'canceled';
-  const changed = await setState(tx, session.id, failed ? 'failed' : 'pending');
+  const changed = await moveSession(tx, session.id, failed ? 'failed' : 'pending');
   if (changed) {
     await recordEvent(tx, {
       commissionId: commission.id,
@@ -133,106 +125,36 @@ async function settleDelayed(
   return failed ? 'failed' : 'pending';
 }
 
-async function setState(tx: Transaction, sessionId: string, state: string): Promise<boolean> {
-  const [row] = await tx
-    .select({ state: checkoutSessions.state })
-    .from(checkoutSessions)
-    .where(eq(checkoutSessions.id, sessionId));
-  if (!row || row.state === state || row.state === 'paid') return false;
-  await tx.update(checkoutSessions).set({ state }).where(eq(checkoutSessions.id, sessionId));
-  return true;
-}
-
 async function bookSession(
   services: Services,
   tx: Transaction,
-  session: Stripe.Checkout.Session,
+  session: Session,
   commission: CommissionRow,
   stageId: string,
 ): Promise<EventOutcome> {
   const intent = session.payment_intent;
-  const providerId = typeof intent === 'string' ? intent : (intent?.id ?? session.id);
   const amountMinor = session.amount_total ?? 0;
   const currency = (session.currency ?? '').toUpperCase();
-  const misfit = await findMisfit(services, tx, commission, stageId, amountMinor, currency);
+  const at = services.now();
+  const misfit = await findMisfit(tx, commission, { stageId, amountMinor, currency }, at);
   const entry = await bookEntry(tx, {
     commissionId: commission.id,
     stagePaymentId: misfit ? null : stageId,
     kind: 'received',
     amountMinor,
     currency,
-    providerId,
+    providerId: typeof intent === 'string' ? intent : (intent?.id ?? session.id),
     cause: { session: session.id, stage: stageId },
-    at: services.now(),
+    at,
   });
-  await setState(tx, session.id, 'paid');
+  await moveSession(tx, session.id, 'paid');
   if (!entry) return 'known';
   if (misfit) {
-    await putInTray(services, tx, commission.id, misfit, {
-      session: session.id,
-      amountMinor,
-      currency,
-      stage: stageId,
-    });
+    await putInTray(tx, commission.id, misfit, { session: session.id, amountMinor, currency, stage: stageId }, at);
     return 'unmatched';
   }
   await welcomePayment(services, tx, commission, entry);
   return 'booked';
-}
-
-async function findMisfit(
-  services: Services,
-  tx: Transaction,
-  commission: CommissionRow,
-  stageId: string,
-  amountMinor: number,
-  currency: string,
-): Promise<Problem | null> {
-  const [row] = await tx
-    .select({ state: quotes.state, revision: quotes.revision })
-    .from(stagePayments)
-    .innerJoin(quotes, eq(quotes.id, stagePayments.quoteId))
-    .where(and(eq(stagePayments.id, stageId), eq(stagePayments.commissionId, commission.id)));
-  if (!row)
-    return {
-      code: 'conflict',
-      message:
-        'Money came in for a stage this commission does not have. Find out from the payer what it is for, or refund it.',
-    };
-  if (row.state !== 'accepted') {
-    return {
-      code: 'stale',
-      message: `Money came in for revision ${row.revision}, which is no longer in force. Refund it, or ask the customer to accept the current quote.`,
-    };
-  }
-  const stage = (await readBalance(tx, commission.id, services.now())).stages.find((each) => each.id === stageId)!;
-  if (stage.currency !== currency || stage.owedMinor !== amountMinor) {
-    return {
-      code: 'conflict',
-      message: `A payment of another amount or currency came in than the ${stage.label.toLowerCase()} owed. Compare both and refund or ask; nothing was guessed.`,
-    };
-  }
-  return null;
-}
-
-async function putInTray(
-  services: Services,
-  tx: Transaction,
-  commissionId: string,
-  problem: Problem,
-  data: Record<string, unknown>,
-) {
-  const at = services.now();
-  await tx.insert(tray).values({ id: uuidv7(), commissionId, problem, data, createdAt: at });
-  await recordEvent(tx, {
-    commissionId,
-    code: 'payment-unmatched',
-    actor: null,
-    actorRole: 'payment',
-    sentence: problem.message,
-    at,
-    data,
-  });
 }
 
 /** After a stage is booked: history, the deal's move when it was the first stage (T12), and M12. */
@@ -253,18 +175,24 @@ export async function welcomePayment(
     at,
     data: { entry: entry.id, stage: entry.stagePaymentId },
   });
-  if (commission.deal === 'agreed') {
-    await moveDeal(tx, commission, {
-      move: 'T12',
-      mover: 'payment',
-      actor: null,
-      actorRole: 'payment',
-      sentence: 'First stage payment received: the place in the year is booked.',
-      public: true,
-      at,
-    });
-    await openPieces(tx, commission.id, at);
-  }
-  const promised = commission.deal === 'agreed' ? await writePromise(tx, commission, at) : commission;
-  await queueReceiptMail(services, tx, promised, entry);
+  const booked = commission.deal === 'agreed' ? await bookDeal(tx, commission, at) : commission;
+  await queueReceiptMail(services, tx, booked, entry);
+}
+
+/** T12. The row returned has the promise, and still the state it was in. */
+async function bookDeal(tx: Transaction, commission: CommissionRow, at: Date): Promise<CommissionRow> {
+  const moved = await moveDeal(tx, commission, {
+    move: 'T12',
+    mover: 'payment',
+    actor: null,
+    actorRole: 'payment',
+    sentence: 'First stage payment received: the place in the year is booked.',
+    public: true,
+    at,
+  });
+  if (!moved.ok) throw new Error(`commission ${commission.ref} could not be booked: ${moved.problem.message}`);
+  const routes = await openPieces(tx, commission.id, at);
+  // Nobody will be asked at gate A when no piece passes it, so what was to fall due there falls due now.
+  if (!routes.some((route) => route.includes('pattern'))) await callInStages(tx, commission.id, ['gate-a'], at);
+  return writePromise(tx, commission, at);
 }

@@ -1,24 +1,23 @@
-import { eq } from 'drizzle-orm';
+import { desc, eq } from 'drizzle-orm';
 import { uuidv7 } from 'uuidv7';
 import { z } from 'zod';
 import { PIECE_STAGES } from '../commission/making';
 import { may, type Actor } from '../commission/permissions';
 import { done, refuse, type Outcome } from '../commission/problem';
-import { findCommission, lockCommission } from './commissions';
+import { lockCommission } from './commissions';
+import type { Transaction } from './db/client';
 import { commissions } from './db/schema/commissions';
-import { photos } from './db/schema/making';
+import { attempts, photos } from './db/schema/making';
+import { addToOpenGate } from './gates';
 import { recordEvent } from './history';
 import { readPieces } from './pieces';
 import type { Services } from './services';
-import { discard, pathOf, put } from './storage/disk';
-import { readMultipart } from './storage/multipart';
-import { makePictures, type MadePicture } from './uploads/pictures';
+import { discard, put, servedPath } from './storage/disk';
+import type { MadePicture } from './uploads/pictures';
 
 export type PhotoRow = typeof photos.$inferSelect;
 export const PHOTO_SIZES = { large: 2_000, medium: 960, thumb: 320 } as const;
 export type PhotoSize = keyof typeof PHOTO_SIZES;
-
-const LIMIT = { bytes: 30 * 1024 * 1024, words: '30 MB' };
 
 /** What comes with a photo. `stage` is the stage being worked towards; `takenAt` the phone's clock. */
 export const photoFieldsSchema = z.object({
@@ -31,52 +30,10 @@ export const photoFieldsSchema = z.object({
   piece: z.preprocess((value) => (value === '' ? undefined : value), z.coerce.number().int().min(1).optional()),
   takenAt: z.preprocess((value) => (value === '' ? undefined : value), z.coerce.date().optional()),
 });
-type PhotoFields = z.output<typeof photoFieldsSchema>;
+export type PhotoFields = z.output<typeof photoFieldsSchema>;
 
-/**
- * Takes in a photo of the work: turned upright, stripped of metadata, in three sizes, and on the
- * customer's page at once. The same client id twice is one photo.
- */
-export async function addPhoto(
-  services: Services,
-  actor: Actor,
-  ref: string | undefined,
-  request: Request,
-): Promise<Outcome<{ id: string }>> {
-  const found = await findCommission(services, actor, ref, 'bench:work');
-  if (!found.ok) return found;
-  const folder = services.config.uploadsFolder;
-  const body = await readMultipart(request, folder, LIMIT);
-  if (!body.ok) return body;
-  const { file, fields } = body.value;
-  const drop = () => discard(folder, file?.key);
-  if (!file || file.bytes === 0) {
-    await drop();
-    return refuse('invalid', 'No photo came with the request. Take it again.');
-  }
-  const parsed = photoFieldsSchema.safeParse(fields);
-  if (!parsed.success) {
-    await drop();
-    return refuse('invalid', parsed.error.issues[0]!.message, {
-      [String(parsed.error.issues[0]!.path[0])]: parsed.error.issues[0]!.message,
-    });
-  }
-  const known = await byClientId(services, parsed.data.clientId);
-  if (known) {
-    await drop();
-    return done({ id: known.id });
-  }
-  const made = await makePictures(pathOf(folder, file.key), PHOTO_SIZES);
-  await drop();
-  if (!made.ok) return made;
-  return storePhoto(services, actor, found.value.id, {
-    fields: parsed.data,
-    sha256: file.sha256,
-    files: await putSizes(folder, made.value),
-  });
-}
-
-async function byClientId(services: Services, clientId: string): Promise<PhotoRow | undefined> {
+/** The photo that came with this id, if it came before. */
+export async function byClientId(services: Services, clientId: string): Promise<PhotoRow | undefined> {
   const [row] = await services.db.select().from(photos).where(eq(photos.clientId, clientId));
   return row;
 }
@@ -109,8 +66,10 @@ export async function storePhoto(
   const { fields } = photo;
   const stored = await services.db.transaction(async (tx) => {
     const commission = await lockCommission(tx, commissionId);
-    const piece = (await readPieces(tx, commission.id)).find((each) => each.number === fields.piece);
-    const takenAt = fields.takenAt && fields.takenAt.getTime() <= now.getTime() ? fields.takenAt : now;
+    const piece = await pieceOf(tx, commission.id, fields.piece);
+    // A phone whose clock is wrong does not push its photo out of the order of things.
+    const taken = fields.takenAt;
+    const takenAt = taken && taken <= now && taken >= commission.createdAt ? taken : now;
     const [row] = await tx
       .insert(photos)
       .values({
@@ -118,6 +77,7 @@ export async function storePhoto(
         clientId: fields.clientId,
         commissionId,
         pieceId: piece?.id ?? null,
+        attemptId: piece ? await attemptOf(tx, piece.id) : null,
         stage: fields.stage,
         caption: fields.caption,
         alt: fields.alt || fields.caption,
@@ -130,6 +90,7 @@ export async function storePhoto(
       .onConflictDoNothing({ target: photos.clientId })
       .returning({ id: photos.id });
     if (row) {
+      if (fields.stage === 'pattern') await addToOpenGate(tx, commissionId, row.id);
       await recordEvent(tx, {
         commissionId,
         code: 'photo',
@@ -149,6 +110,23 @@ export async function storePhoto(
   return done({ id: rival.id });
 }
 
+/** The piece a photo shows: the one named, or the only one there is. */
+async function pieceOf(tx: Transaction, commissionId: string, number: number | undefined) {
+  const all = await readPieces(tx, commissionId);
+  return all.length === 1 ? all[0] : all.find((piece) => piece.number === number);
+}
+
+/** The casting a piece is at; none before its mould, and never one that was scrapped. */
+async function attemptOf(tx: Transaction, pieceId: string): Promise<string | null> {
+  const [row] = await tx
+    .select({ id: attempts.id, result: attempts.result })
+    .from(attempts)
+    .where(eq(attempts.pieceId, pieceId))
+    .orderBy(desc(attempts.number))
+    .limit(1);
+  return row && row.result !== 'scrapped' ? row.id : null;
+}
+
 /** A stored photo's file for those who may see its commission's photos. */
 export async function findPhoto(
   services: Services,
@@ -157,13 +135,13 @@ export async function findPhoto(
   size: string | undefined,
 ): Promise<Outcome<{ path: string }>> {
   const gone = refuse('not-found', 'There is no such photo, or it is not yours to see.');
-  if (!id || !/^[0-9a-f-]{36}$/.test(id) || !size || !(size in PHOTO_SIZES)) return gone;
+  if (!z.uuid().safeParse(id).success || !size || !Object.hasOwn(PHOTO_SIZES, size)) return gone;
   const [row] = await services.db
     .select({ photo: photos, customerId: commissions.customerId })
     .from(photos)
     .innerJoin(commissions, eq(commissions.id, photos.commissionId))
-    .where(eq(photos.id, id));
+    .where(eq(photos.id, id ?? ''));
   if (!row || !may(actor, 'photo:read', row)) return gone;
   if (actor?.role === 'customer' && !row.photo.shared) return gone;
-  return done({ path: pathOf(services.config.uploadsFolder, row.photo.files[size as PhotoSize].key) });
+  return done({ path: servedPath(row.photo.files[size as PhotoSize].key) });
 }

@@ -11,9 +11,9 @@ export type AttemptRow = typeof attempts.$inferSelect;
 
 /**
  * Opens the pieces of a booked commission from its accepted quote: one row a wanted casting, with its
- * route and the promised mass. Does nothing when they are open already.
+ * route and the promised mass. Pieces that are open already stay as they are. Returns the routes, in order.
  */
-export async function openPieces(tx: Transaction, commissionId: string, at: Date): Promise<void> {
+export async function openPieces(tx: Transaction, commissionId: string, at: Date): Promise<PieceRow['route'][]> {
   const [quote] = await tx
     .select({ body: quotes.body })
     .from(quotes)
@@ -30,6 +30,7 @@ export async function openPieces(tx: Transaction, commissionId: string, at: Date
     updatedAt: at,
   }));
   await tx.insert(pieces).values(rows).onConflictDoNothing();
+  return rows.map((row) => row.route);
 }
 
 /** The pieces of a commission in their order. */

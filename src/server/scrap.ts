@@ -5,10 +5,12 @@ import { done, refuse, type Outcome } from '../commission/problem';
 import type { Scrap } from '../commission/work-done';
 import { findCommission, lockCommission, type CommissionRow } from './commissions';
 import type { Transaction } from './db/client';
-import { commissions, events } from './db/schema/commissions';
-import { attempts, pieces } from './db/schema/making';
+import { commissions } from './db/schema/commissions';
+import { attempts, photos, pieces } from './db/schema/making';
+import { findEntry } from './entries';
 import { recordEvent } from './history';
 import { queueScrapMail } from './making-mails';
+import { IN_WORK, NOT_AT_THE_BENCH } from './making-rules';
 import { readPieces, type AttemptRow, type PieceRow } from './pieces';
 import { currentRates } from './rates';
 import type { Services } from './services';
@@ -35,9 +37,9 @@ export async function scrapCasting(
     const all = await readPieces(tx, commission.id);
     const piece = all.find((each) => each.number === input.piece);
     if (!piece) return refuse('not-found', 'This commission has no piece of that number.');
-    if (await wasEntered(tx, commission.id, input.clientId)) return done({ piece: piece.number, stage: piece.stage });
-    if (!['making', 'rework'].includes(commission.deal))
-      return refuse('conflict', 'This commission is not at the bench. Reload the page to see where it stands.');
+    if (await findEntry(tx, commission.id, 'T23', input.clientId))
+      return done({ piece: piece.number, stage: piece.stage });
+    if (!IN_WORK.includes(commission.deal)) return refuse('conflict', NOT_AT_THE_BENCH);
     if (piece.stage !== input.from)
       return refuse('stale', `Piece ${piece.number} has moved on since the page was opened. Reload it and look again.`);
     if (BEFORE_POUR.has(piece.stage))
@@ -45,6 +47,10 @@ export async function scrapCasting(
     const attempt = await openOrSoundAttempt(tx, piece);
     if (!attempt)
       return refuse('conflict', 'There is no pour on record for this piece. Ask the owner to put the record right.');
+    if (!(await ownPhoto(tx, commission.id, attempt.id, input.photo)))
+      return refuse('invalid', 'The photo picked for this casting is not one of this commission’s. Pick another.', {
+        photo: 'Pick one of the photos shown.',
+      });
     const back = stageAfterScrap(piece.route);
     await closeAttempt(tx, attempt, input, now);
     await tx.update(pieces).set({ stage: back, measured: null, updatedAt: now }).where(eq(pieces.id, piece.id));
@@ -54,12 +60,15 @@ export async function scrapCasting(
   });
 }
 
-async function wasEntered(tx: Transaction, commissionId: string, clientId: string): Promise<boolean> {
+/** Puts the photo that shows the fault with its attempt. False when it is none of this commission's. */
+async function ownPhoto(tx: Transaction, commissionId: string, attemptId: string, photo?: string): Promise<boolean> {
+  if (!photo) return true;
   const rows = await tx
-    .select({ data: events.data })
-    .from(events)
-    .where(and(eq(events.commissionId, commissionId), eq(events.code, 'T23')));
-  return rows.some((row) => (row.data as { clientId?: string }).clientId === clientId);
+    .update(photos)
+    .set({ attemptId })
+    .where(and(eq(photos.id, photo), eq(photos.commissionId, commissionId)))
+    .returning({ id: photos.id });
+  return rows.length > 0;
 }
 
 async function openOrSoundAttempt(tx: Transaction, piece: PieceRow): Promise<AttemptRow | null> {
@@ -121,7 +130,7 @@ async function writeScrap(
     actor: facts.actor,
     from: input.from,
     to: facts.back,
-    sentence: `Piece ${piece.number} was scrapped after “${STAGE_ACTS[input.from].toLowerCase()}”: ${cause.name.toLowerCase()}. ${cause.plain} It is poured again at no charge.`,
+    sentence: `${facts.pieces === 1 ? 'The casting' : `Piece ${piece.number}`} was scrapped after “${STAGE_ACTS[input.from].toLowerCase()}”: ${cause.name.toLowerCase()}. ${cause.plain} It is poured again at no charge.`,
     public: true,
     at: services.now(),
     data: {

@@ -1,7 +1,9 @@
 import { and, desc, eq, isNull } from 'drizzle-orm';
+import { z } from 'zod';
 import { may, type Actor } from '../commission/permissions';
 import { done, refuse, type Outcome } from '../commission/problem';
 import { commissions, tray } from './db/schema/commissions';
+import { recordEvent } from './history';
 import type { Services } from './services';
 
 /** Something that did not fit and waits for the owner. */
@@ -42,11 +44,19 @@ export async function settleTrayItem(
   id: string | undefined,
 ): Promise<Outcome<{ settled: boolean }>> {
   if (!may(actor, 'payment:record')) return refuse(actor ? 'not-allowed' : 'sign-in-needed', FOR_OWNER);
-  if (!id || !/^[0-9a-f-]{36}$/.test(id)) return refuse('not-found', 'There is no such item in the tray.');
-  const rows = await services.db
-    .update(tray)
-    .set({ settledAt: services.now(), settledBy: actor!.id })
-    .where(and(eq(tray.id, id), isNull(tray.settledAt)))
-    .returning({ id: tray.id });
-  return done({ settled: rows.length > 0 });
+  if (!id || !z.uuid().safeParse(id).success) return refuse('not-found', 'There is no such item in the tray.');
+  const at = services.now();
+  return services.db.transaction(async (tx) => {
+    const [row] = await tx
+      .update(tray)
+      .set({ settledAt: at, settledBy: actor!.id })
+      .where(and(eq(tray.id, id), isNull(tray.settledAt)))
+      .returning({ commissionId: tray.commissionId });
+    if (row?.commissionId) {
+      const sentence = 'What did not fit was dealt with.';
+      const data = { item: id };
+      await recordEvent(tx, { commissionId: row.commissionId, code: 'tray-settled', actor, sentence, at, data });
+    }
+    return done({ settled: row !== undefined });
+  });
 }

@@ -3,6 +3,7 @@ import { sendMail } from '../mail/send';
 import { reconcileCheckouts } from '../reconcile';
 import type { Services } from '../services';
 import { sweepSignIns } from '../sign-in-sweep';
+import { sweepFiles } from '../sweep-files';
 import { sweepUploads } from '../uploads/read-upload';
 import { lapseDeposits, lapseQuotes, requeueMails } from './clock';
 
@@ -18,6 +19,7 @@ export const TASKS: Record<string, Job> = {
   'lapse-deposits': async (services) => report(services, 'first payments looked at', await lapseDeposits(services)),
   'requeue-mails': async (services) => report(services, 'waiting mails queued again', await requeueMails(services)),
   reconcile: async (services) => report(services, 'payments taken in late', await reconcileCheckouts(services)),
+  'sweep-files': async (services) => report(services, 'files nobody needs deleted', await sweepFiles(services)),
   'sweep-sign-ins': async (services) => report(services, 'rows of past sign-ins deleted', await sweepSignIns(services)),
   'sweep-uploads': async (services) => report(services, 'forgotten files deleted', await sweepUploads(services)),
 };
@@ -29,6 +31,7 @@ export const CLOCK_TASKS: Record<string, string> = {
   'requeue-mails': '*/10 * * * *',
   reconcile: '*/5 * * * *',
   'sweep-sign-ins': '27 * * * *',
+  'sweep-files': '37 * * * *',
   'sweep-uploads': '37 * * * *',
 };
 

@@ -6,11 +6,21 @@ import { Transform, type Readable } from 'node:stream';
 import { pipeline } from 'node:stream/promises';
 import { uuidv7 } from 'uuidv7';
 
+const KEY = /^[a-z]+\/[0-9a-f]{2}\/[0-9a-f-]{36}[a-z0-9.-]*$/;
+
+function checked(key: string): string {
+  if (!KEY.test(key)) throw new Error('a storage key was not made by storage');
+  return key;
+}
+
 /** Where stored files and half-received ones lie; keys are made here and hold no outside text. */
 export function pathOf(folder: string, key: string): string {
-  if (!/^[a-z]+\/[0-9a-f]{2}\/[0-9a-f-]{36}[a-z0-9.-]*$/.test(key))
-    throw new Error('a storage key was not made by storage');
-  return join(folder, key);
+  return join(folder, checked(key));
+}
+
+/** The path of a stored file inside the data folder, as `fileResponse` takes it. */
+export function servedPath(key: string): string {
+  return `uploads/${checked(key)}`;
 }
 
 /** A new key such as "uploads/3f/<uuid>.webp"; two letters spread files over folders. */
@@ -62,13 +72,19 @@ export async function keep(folder: string, arrivingKey: string, key: string): Pr
   const to = pathOf(folder, key);
   await mkdir(dirname(to), { recursive: true });
   const from = pathOf(folder, arrivingKey);
-  const handle = await open(from, 'r');
+  await flush(from);
+  await rename(from, to);
+  // The new name is in the folder's own data, which is flushed apart from the file's.
+  await flush(dirname(to));
+}
+
+async function flush(path: string): Promise<void> {
+  const handle = await open(path, 'r');
   try {
     await handle.sync();
   } finally {
     await handle.close();
   }
-  await rename(from, to);
 }
 
 /** Writes a small made file (a thumbnail, a re-encoded picture) under a new key, whole or not at all. */

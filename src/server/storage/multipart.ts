@@ -1,6 +1,6 @@
 import { Readable } from 'node:stream';
 import type { ReadableStream as NodeWebStream } from 'node:stream/web';
-import { Busboy, type BusboyHeaders, type BusboyInstance } from '@fastify/busboy';
+import { Busboy, type BusboyFileStream, type BusboyHeaders, type BusboyInstance } from '@fastify/busboy';
 import { done, refuse, type Outcome } from '../../commission/problem';
 import { discard, receive, type Received } from './disk';
 
@@ -19,6 +19,8 @@ export interface FileLimit {
 /**
  * Reads a multipart request with one file in field `file`. The file is streamed to disk under `folder`;
  * a sender that hangs up, or a file over the limit, leaves nothing behind.
+ *
+ * @throws when the disk cannot take the file
  */
 export async function readMultipart(request: Request, folder: string, limit: FileLimit): Promise<Outcome<Multipart>> {
   const type = request.headers.get('content-type') ?? '';
@@ -34,54 +36,83 @@ export async function readMultipart(request: Request, folder: string, limit: Fil
   } catch {
     return refuse('invalid', 'The form data has no boundary, so its parts cannot be told apart. Send it again.');
   }
-  return takeApart(request, parser, folder, limit);
+  const parts = new Parts(parser, folder);
+  const whole = await parts.readAll(Readable.fromWeb(request.body as NodeWebStream));
+  if (!whole) return refuse('invalid', 'The file did not arrive whole. Send it again.');
+  const { fields, arrival } = parts;
+  const file = (await arrival?.received) ?? null;
+  if (!file || !arrival?.stream.truncated) return done({ fields, file });
+  await discard(folder, file.key);
+  return refuse(
+    'too-large',
+    `This file is larger than ${limit.words}. Send a smaller one, or write to us and we find another way.`,
+  );
 }
 
-async function takeApart(
-  request: Request,
-  parser: BusboyInstance,
-  folder: string,
-  limit: FileLimit,
-): Promise<Outcome<Multipart>> {
-  const fields: Record<string, string> = {};
-  let arriving: Promise<Received & { name: string; cut: boolean }> | null = null;
-  parser.on('field', (name, value) => {
-    fields[name] = value;
-  });
-  parser.on('file', (name, stream, fileName) => {
-    if (name !== 'file') return void stream.resume();
-    arriving = receive(folder, stream).then((received) => ({
-      ...received,
-      name: fileName ?? '',
-      cut: stream.truncated,
-    }));
-    // Awaited below; this keeps a failure from being reported as unhandled before that.
-    arriving.catch(() => undefined);
-  });
-  try {
-    await new Promise<void>((resolve, reject) => {
-      const source = Readable.fromWeb(request.body as NodeWebStream);
-      source.once('error', reject);
-      parser.once('error', reject);
-      parser.once('finish', resolve);
-      source.pipe(parser);
+interface Arrival {
+  stream: BusboyFileStream;
+  received: Promise<Received & { name: string }>;
+}
+
+/** The parts of one body while they come in. */
+class Parts {
+  readonly fields: Record<string, string> = {};
+  arrival: Arrival | null = null;
+  #diskFault: { error: unknown } | null = null;
+  readonly #parser: BusboyInstance;
+  readonly #folder: string;
+
+  constructor(parser: BusboyInstance, folder: string) {
+    this.#parser = parser;
+    this.#folder = folder;
+    parser.on('field', (name, value) => {
+      this.fields[name] = value;
     });
-  } catch {
-    await dropArrived(folder, arriving);
-    return refuse('invalid', 'The file did not arrive whole. Send it again.');
+    parser.on('file', (name, stream, fileName) => this.#take(name, stream, fileName));
   }
-  const file = arriving === null ? null : await (arriving as Promise<Received & { name: string; cut: boolean }>);
-  if (file?.cut) {
-    await discard(folder, file.key);
-    return refuse(
-      'too-large',
-      `This file is larger than ${limit.words}. Send a smaller one, or write to us and we find another way.`,
-    );
-  }
-  return done({ fields, file });
-}
 
-async function dropArrived(folder: string, arriving: Promise<Received> | null): Promise<void> {
-  const received = await arriving?.catch(() => null);
-  if (received) await discard(folder, received.key);
+  /**
+   * Reads to the end. False when the body was cut off or is no multipart; what had arrived is gone then. Beyond the
+   * limit nothing is written any more, but the rest is read, since a sender that is cut off never hears why.
+   */
+  async readAll(source: Readable): Promise<boolean> {
+    try {
+      await new Promise<void>((resolve, reject) => {
+        source.once('error', reject);
+        source.once('close', () => source.readableEnded || reject(new Error('the sender hung up')));
+        this.#parser.once('error', reject);
+        this.#parser.once('finish', resolve);
+        this.#onDiskFault = reject;
+        source.pipe(this.#parser);
+      });
+      return true;
+    } catch (error) {
+      source.destroy();
+      await this.#drop();
+      if (this.#diskFault) throw this.#diskFault.error;
+      if (!(error instanceof Error)) throw error;
+      return false;
+    }
+  }
+
+  #onDiskFault: (error: unknown) => void = () => undefined;
+
+  #take(name: string, stream: BusboyFileStream, fileName: string | undefined): void {
+    if (name !== 'file' || this.arrival) return void stream.resume();
+    const received = receive(this.#folder, stream).then((file) => ({ ...file, name: fileName ?? '' }));
+    this.arrival = { stream, received };
+    received.catch((error: unknown) => {
+      if (stream.errored === error) return;
+      this.#diskFault = { error };
+      this.#onDiskFault(error);
+    });
+  }
+
+  async #drop(): Promise<void> {
+    const { arrival } = this;
+    if (!arrival) return;
+    arrival.stream.destroy(new Error('the file was cut off'));
+    const file = await arrival.received.catch(() => null);
+    if (file) await discard(this.#folder, file.key);
+  }
 }

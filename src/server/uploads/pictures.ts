@@ -24,6 +24,22 @@ export async function makePictures<Name extends string>(
   source: string,
   sides: Record<Name, number>,
 ): Promise<Outcome<Record<Name, MadePicture>>> {
+  return oneAtATime(() => openAndMake(source, sides));
+}
+
+let busy: Promise<unknown> = Promise.resolve();
+
+/** A large picture takes some hundred megabytes while it is open, so there is only ever one. */
+function oneAtATime<T>(work: () => Promise<T>): Promise<T> {
+  const mine = busy.then(work);
+  busy = mine.catch(() => undefined);
+  return mine;
+}
+
+async function openAndMake<Name extends string>(
+  source: string,
+  sides: Record<Name, number>,
+): Promise<Outcome<Record<Name, MadePicture>>> {
   try {
     const image = sharp(source, { limitInputPixels: MOST_PIXELS, failOn: 'warning', animated: false });
     const { format } = await image.metadata();

@@ -1,4 +1,4 @@
-import { and, eq, isNull, lt } from 'drizzle-orm';
+import { and, eq, inArray, isNull, lt, or } from 'drizzle-orm';
 import { may, type Actor } from '../../commission/permissions';
 import { done, refuse, type Outcome } from '../../commission/problem';
 import { commissions, uploads } from '../db/schema/commissions';
@@ -46,13 +46,26 @@ export async function removeUpload(
 }
 
 const ORPHAN_DAYS = 7;
+const UNCONFIRMED_DAYS = 30;
 
-/** Deletes files that no enquiry has taken up for a week, rows first. Returns how many. */
+/**
+ * Deletes files that no enquiry has taken up for a week, or whose enquiry was not confirmed for a month; rows first.
+ * Returns how many.
+ */
 export async function sweepUploads(services: Services): Promise<number> {
-  const before = new Date(services.now().getTime() - ORPHAN_DAYS * 86_400_000);
+  const daysAgo = (days: number) => new Date(services.now().getTime() - days * 86_400_000);
+  const unconfirmed = services.db
+    .select({ id: commissions.id })
+    .from(commissions)
+    .where(isNull(commissions.confirmedAt));
   const rows = await services.db
     .delete(uploads)
-    .where(and(isNull(uploads.commissionId), lt(uploads.createdAt, before)))
+    .where(
+      or(
+        and(isNull(uploads.commissionId), lt(uploads.createdAt, daysAgo(ORPHAN_DAYS))),
+        and(inArray(uploads.commissionId, unconfirmed), lt(uploads.createdAt, daysAgo(UNCONFIRMED_DAYS))),
+      ),
+    )
     .returning();
   for (const row of rows) await discard(services.config.uploadsFolder, row.storageKey, row.thumbKey);
   return rows.length;

@@ -1,17 +1,18 @@
-import { and, count, eq, sum } from 'drizzle-orm';
+import { and, count, eq, isNull, sum } from 'drizzle-orm';
 import { uuidv7 } from 'uuidv7';
 import type { Measure } from '../../casting/measure';
 import { may, type Actor } from '../../commission/permissions';
 import { done, refuse, type Outcome } from '../../commission/problem';
 import { uploads } from '../db/schema/commissions';
 import type { Services } from '../services';
-import { discard, keep, newKey, pathOf } from '../storage/disk';
+import { discard, keep, newKey, servedPath } from '../storage/disk';
 import { readMultipart } from '../storage/multipart';
-import { inspectFile } from './inspect';
+import { inspectFile, type Inspected } from './inspect';
 
 const MB = 1024 * 1024;
 const LIMIT = { bytes: 200 * MB, words: '200 MB' };
 const MOST_FILES = 40;
+const MOST_LETTERS = 120;
 const MOST_BYTES = 1_500 * MB;
 
 /** What the sender is told about a file now in the studio's keeping. Sizes in bytes. */
@@ -70,11 +71,11 @@ async function tooMuch(services: Services, browserId: string): Promise<Outcome<n
   const [held] = await services.db
     .select({ files: count(), bytes: sum(uploads.bytes) })
     .from(uploads)
-    .where(eq(uploads.browserId, browserId));
+    .where(and(eq(uploads.browserId, browserId), isNull(uploads.commissionId)));
   if ((held?.files ?? 0) < MOST_FILES && Number(held?.bytes ?? 0) < MOST_BYTES) return null;
   return refuse(
     'too-many',
-    `You have sent ${MOST_FILES} files or 1.5 GB already. Remove some, or write to us about the rest.`,
+    `${MOST_FILES} files or 1.5 GB are waiting here already. Remove some, send what you have, or write to us about the rest.`,
   );
 }
 
@@ -92,7 +93,7 @@ interface Arrived {
   clientId: string;
   file: { name: string; bytes: number; sha256: string };
   key: string;
-  found: { kind: UploadAnswer['kind']; mime: string; thumbKey: string | null; measure: Measure | null; bytes?: number };
+  found: Inspected;
 }
 
 async function store(services: Services, arrived: Arrived): Promise<Outcome<UploadAnswer>> {
@@ -108,7 +109,7 @@ async function store(services: Services, arrived: Arrived): Promise<Outcome<Uplo
       displayName: displayName(file.name),
       mime: found.mime,
       bytes: found.bytes ?? file.bytes,
-      sha256: file.sha256,
+      sha256: found.sha256 ?? file.sha256,
       storageKey: arrived.key,
       thumbKey: found.thumbKey,
       measure: found.measure,
@@ -128,10 +129,10 @@ async function store(services: Services, arrived: Arrived): Promise<Outcome<Uplo
 export function displayName(name: string): string {
   const last = name.normalize('NFC').split(/[\\/]/).at(-1) ?? '';
   const clean = last
+    .toWellFormed()
     .replace(/[\p{Cc}\p{Cf}]/gu, '')
-    .trim()
-    .slice(0, 120);
-  return clean || 'file';
+    .trim();
+  return [...clean].slice(0, MOST_LETTERS).join('') || 'file';
 }
 
 /** The answer for a stored row. */
@@ -146,8 +147,8 @@ export function answerOf(row: UploadRow): UploadAnswer {
   };
 }
 
-/** Where the bytes of a stored upload lie. */
-export function uploadPath(services: Services, row: UploadRow, part: 'file' | 'thumb'): string | null {
+/** The path under which the bytes of a stored upload are served. */
+export function uploadPath(row: UploadRow, part: 'file' | 'thumb'): string | null {
   const key = part === 'file' ? row.storageKey : row.thumbKey;
-  return key ? pathOf(services.config.uploadsFolder, key) : null;
+  return key ? servedPath(key) : null;
 }

@@ -1,5 +1,5 @@
 import type { APIRoute } from 'astro';
-import { json, jsonProblem } from '../../../server/door';
+import { json } from '../../../server/door';
 import { recordStripeEvent } from '../../../server/payments';
 import { verifyStripeEvent } from '../../../server/stripe/verify';
 
@@ -11,7 +11,7 @@ export const POST: APIRoute = async ({ request, locals }) => {
   const event = await verifyStripeEvent(services, await request.text(), request.headers.get('stripe-signature'));
   if (!event.ok) {
     services.log.warn({ problem: event.problem.code }, 'a Stripe event with a bad signature was refused');
-    return jsonProblem(event.problem);
+    return json({ ok: false, problem: event.problem }, 400);
   }
   const outcome = await recordStripeEvent(services, event.value);
   services.log.info({ event: event.value.id, type: event.value.type, outcome }, 'took in a Stripe event');

@@ -12,27 +12,33 @@ export const GET: APIRoute = async ({ params, locals, request }) => {
   const { services, user } = locals;
   const found = await findCommission(services, user, params['ref'], 'commission:read');
   if (!found.ok) return jsonProblem(found.problem);
-  const commissionId = found.value.id;
-  const encoder = new TextEncoder();
-  let stop = () => {};
-  const body = new ReadableStream<Uint8Array>({
-    async start(controller) {
-      const say = (text: string) => controller.enqueue(encoder.encode(text));
-      const beat = setInterval(() => say(': still here\n\n'), BEAT_MS);
-      const unwatch = await watchCommission(services, commissionId, () => say('event: news\ndata: {}\n\n'));
-      stop = () => {
-        clearInterval(beat);
-        unwatch();
-      };
-      if (request.signal.aborted) return stop();
-      request.signal.addEventListener('abort', stop, { once: true });
-      say('retry: 2000\nevent: ready\ndata: {}\n\n');
-    },
-    cancel() {
-      stop();
-    },
-  });
-  return new Response(body, {
+  const stream = newsStream((listener) => watchCommission(services, found.value.id, listener), request.signal);
+  return new Response(stream, {
     headers: { 'content-type': 'text/event-stream', 'cache-control': 'no-store', 'x-accel-buffering': 'no' },
   });
 };
+
+/** The stream of one reader: it ends, and lets go of everything, when the reader leaves or the news cannot be had. */
+function newsStream(watch: (listener: () => void) => Promise<() => void>, left: AbortSignal) {
+  const encoder = new TextEncoder();
+  const ends: (() => void)[] = [];
+  let over = false;
+  const end = () => {
+    over = true;
+    for (const each of ends.splice(0)) each();
+  };
+  return new ReadableStream<Uint8Array>({
+    async start(controller) {
+      const say = (text: string) => {
+        if (!over) controller.enqueue(encoder.encode(text));
+      };
+      const unwatch = await watch(() => say('event: news\ndata: {}\n\n'));
+      const beat = setInterval(() => say(': still here\n\n'), BEAT_MS);
+      ends.push(unwatch, () => clearInterval(beat));
+      if (over || left.aborted) return end();
+      left.addEventListener('abort', end, { once: true });
+      say('retry: 2000\nevent: ready\ndata: {}\n\n');
+    },
+    cancel: end,
+  });
+}

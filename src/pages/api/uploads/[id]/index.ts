@@ -12,7 +12,7 @@ export const GET: APIRoute = async ({ params, locals }) => {
   if (!found.ok) return jsonProblem(found.problem);
   const row = found.value;
   const as = row.kind === 'picture' ? 'inline' : 'attachment';
-  return fileResponse({ path: uploadPath(locals.services, row, 'file')!, type: row.mime, name: row.displayName, as });
+  return fileResponse({ path: uploadPath(row, 'file')!, type: row.mime, name: row.displayName, as });
 };
 
 /** Removes a file that belongs to no enquiry yet. */

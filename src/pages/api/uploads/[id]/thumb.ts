@@ -10,7 +10,7 @@ export const prerender = false;
 export const GET: APIRoute = async ({ params, locals }) => {
   const found = await findUpload(locals.services, locals.user, locals.browserId, params['id']);
   if (!found.ok) return jsonProblem(found.problem);
-  const path = uploadPath(locals.services, found.value, 'thumb');
+  const path = uploadPath(found.value, 'thumb');
   if (!path) return jsonProblem({ code: 'not-found', message: 'This file has no small picture.' });
   return fileResponse({ path, type: 'image/webp', cacheControl: 'private, max-age=86400, immutable' });
 };
