@@ -127,3 +127,8 @@ export function estimateQuery(fields: EstimateFields, { rates, forms }: RateCard
   });
   return new URLSearchParams(said).toString();
 }
+
+/** The inputs as a query, word for word: nothing typed is lost, whether it can be priced or not. */
+export function spokenQuery(fields: EstimateFields): string {
+  return new URLSearchParams(Object.entries(spoken(fields))).toString();
+}

@@ -20,9 +20,9 @@ export function FileDrop(props: FileDropProps) {
   const hydrated = useHydrated();
   return (
     <section className="file-drop-box" aria-labelledby={`${props.id}-heading`}>
-      <h2 className="label" id={`${props.id}-heading`}>
+      <p className="label" id={`${props.id}-heading`}>
         Drawings, photos and 3D files
-      </h2>
+      </p>
       <noscript>
         <p className="hint">
           Sending files from here needs scripts. Without them, send the enquiry first: once your address is confirmed,

@@ -11,16 +11,15 @@ const BUYERS = [
   { value: 'institution', label: 'A museum, company or group' },
 ];
 
-/** How many pieces, where they go, in which money, for whom, and whether it is urgent. */
+/** How many pieces, where they go, in which money, for whom, with how many hours of finishing, and whether it is urgent. */
 export function HowMany({ countries }: { countries: readonly Choice[] }) {
   const { fields, view, live, register, errorOf } = usePriceState();
   return (
     <div className="how-many">
       <Field
-        label="Pieces"
+        label="Pieces, 1 to 24"
         name="pieces"
         inputMode="numeric"
-        hint="1 to 24"
         value={fields.pieces}
         error={errorOf('pieces')}
         registration={register('pieces')}
@@ -48,6 +47,15 @@ export function HowMany({ countries }: { countries: readonly Choice[] }) {
         value={fields.buyer}
         error={errorOf('buyer')}
         registration={register('buyer')}
+      />
+      <Field
+        label="Finishing, if not our usual"
+        name="finishHours"
+        unit="hours"
+        inputMode="decimal"
+        value={fields.finishHours}
+        error={errorOf('finishHours')}
+        registration={register('finishHours')}
       />
       <div className="how-many-rush">
         <Checkbox

@@ -21,7 +21,7 @@ export function Piece({ forms, plate }: PieceProps) {
   const { form } = view.choices;
   const shown = usePlate(form?.slug, plate);
   return (
-    <div>
+    <div className="price-piece">
       <div className="max-w-96">
         <Select
           label="Form"

@@ -8,6 +8,7 @@ import { LiveRange } from './LiveRange';
 import { Modes } from './Modes';
 import { OwnPiece, OwnSizes } from './OwnPiece';
 import { Piece, type PieceProps } from './Piece';
+import { PriceBar } from './PriceBar';
 import { PriceContext } from './price-context';
 import { PricePanel } from './PricePanel';
 import type { PriceStart } from './price-start';
@@ -66,6 +67,7 @@ export function PricePage({ start, forms, countries, plate }: PricePageProps) {
           </div>
         </div>
         <Reasons />
+        <PriceBar />
       </form>
       <LiveRange />
     </PriceContext>

@@ -3,7 +3,8 @@
  * are not ticked are ''. Null where the form is not on the page, as on the server.
  */
 export function typedBefore(formId: string, ticks: readonly string[]): Record<string, string> | null {
-  const form = typeof document === 'undefined' ? null : document.getElementById(formId);
+  if (typeof document === 'undefined') return null;
+  const form = document.getElementById(formId);
   if (!(form instanceof HTMLFormElement)) return null;
   const typed: Record<string, string> = Object.fromEntries(ticks.map((name) => [name, '']));
   new FormData(form).forEach((value, name) => {
