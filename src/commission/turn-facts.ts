@@ -53,3 +53,10 @@ export function daysBetween(from: Date, to: Date): number {
 export function dayCount(days: number): string {
   return days === 0 ? 'today' : days === 1 ? '1 day' : `${days} days`;
 }
+
+const LONG_DAY = new Intl.DateTimeFormat('en-GB', { dateStyle: 'long', timeZone: 'UTC' });
+
+/** A calendar day YYYY-MM-DD as "5 January 2027". */
+export function dayInWords(day: string): string {
+  return LONG_DAY.format(new Date(`${day.slice(0, 10)}T00:00:00Z`));
+}

@@ -1,6 +1,6 @@
 import type { DealState } from './deal';
 import { formatMoney } from './money';
-import { dayCount, daysBetween, type Turn, type TurnFacts, type WhoseTurn } from './turn-facts';
+import { dayCount, dayInWords, daysBetween, type Turn, type TurnFacts, type WhoseTurn } from './turn-facts';
 import { turnInMaking } from './turn-in-making';
 
 /** Says whose turn it is. Every state of the deal has an answer. */
@@ -31,9 +31,9 @@ const BY_STATE: Record<DealState, (facts: TurnFacts) => WhoseTurn> = {
   held: (facts) => ({
     who: 'nobody',
     sentence: facts.heldUntil
-      ? `Your commission is held until ${facts.heldUntil}. Nothing happens before then unless you ask.`
+      ? `Your commission is held until ${dayInWords(facts.heldUntil)}. Nothing happens before then unless you ask.`
       : 'Your commission is held. Nothing happens until you or we take it up again.',
-    studioSentence: facts.heldUntil ? `Held until ${facts.heldUntil}` : 'Held',
+    studioSentence: facts.heldUntil ? `Held until ${dayInWords(facts.heldUntil)}` : 'Held',
     since: facts.since,
   }),
   finished: (facts) =>

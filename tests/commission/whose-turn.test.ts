@@ -58,7 +58,7 @@ describe('whose turn it is', () => {
     ['making', { pieces, gate: { gate: 'A', state: 'changes', at: days(-4) } }, 'studio', /asked for changes/],
     ['making', { pieces, payment: { ...deposit, label: 'When you approve gate A' } }, 'customer', /is due/],
     ['held', {}, 'nobody', /is held/],
-    ['held', { heldUntil: '2027-05-01' }, 'nobody', /until 2027-05-01/],
+    ['held', { heldUntil: '2027-05-01' }, 'nobody', /until 1 May 2027/],
     ['finished', { payment: { ...deposit, label: 'Balance' } }, 'customer', /balance of £660\.00 is due/],
     ['finished', { payment: { ...deposit, state: 'overdue', dueAt: days(-9) } }, 'customer', /overdue/],
     ['finished', {}, 'studio', /pack it/],
