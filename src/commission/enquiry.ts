@@ -17,6 +17,7 @@ import { emptyIsNone, optionalText, tick } from './input-fields';
 const keysOf = <K extends string>(choices: Record<K, unknown>) => Object.keys(choices) as [K, ...K[]];
 const NAME = 'Tell us your name, in up to 120 characters.';
 const WISH = 'Tell us in a sentence or more what you have in mind.';
+const CONSENT = 'We need your word that we may keep what you send, or we cannot read it.';
 const BUDGET = 'A budget is a whole number, without pence. Leave it empty if you would rather not say.';
 
 /** Who asks, what for, by when and with what right; beside the estimate's own fields. */
@@ -48,7 +49,7 @@ const wordsSchema = z.object({
     z.coerce.number(BUDGET).int(BUDGET).min(1, BUDGET).max(1_000_000, BUDGET).optional(),
   ),
   adult: tick,
-  consent: tick,
+  consent: tick.refine((given) => given, CONSENT),
   uploads: z.preprocess(
     (value) => (typeof value === 'string' ? (value === '' ? [] : [value]) : value),
     z.array(z.uuid('One of the files lost its number; add it again.')).max(20, 'Send at most 20 files.').default([]),
@@ -60,7 +61,6 @@ type Words = z.output<typeof wordsSchema>;
 
 const checkedWords = wordsSchema.superRefine((words, context) => {
   const need = (path: keyof Words, message: string) => context.addIssue({ code: 'custom', path: [path], message });
-  if (!words.consent) need('consent', 'We need your word that we may keep what you send, or we cannot read it.');
   if (words.mark === 'none') need('mark', MARK_REFUSAL);
   if (words.neededBy === 'date' && !words.neededByDate) need('neededByDate', 'Give the date, or choose “no date”.');
   if (words.neededBy === 'season' && !words.neededBySeason)

@@ -40,13 +40,14 @@ export function WordChoice({ name, label, choices, placeholder, hint, required }
   );
 }
 
-/** A box of the enquiry to tick. */
+/** A box of the enquiry that has to be ticked. */
 export function WordTick({ name, hint, children }: { name: WordField; hint?: ReactNode; children: ReactNode }) {
   const { words, errorOf, register } = useEnquiryState();
   return (
     <Checkbox
       name={name}
       checked={words[name] === 'yes'}
+      required
       hint={hint}
       error={errorOf(name)}
       registration={register(name)}

@@ -14,7 +14,7 @@ export function ArrivedFile({ file, alloy, onMeasure, onRemove }: ArrivedFilePro
   const { measure } = file;
   const volume = measure?.volumeMm3 ?? null;
   return (
-    <li className="file-row">
+    <li className="sent-file">
       {file.thumb ? <img src={file.thumb} alt="" width="72" height="72" loading="lazy" /> : <span aria-hidden="true" />}
       <div>
         <p className="font-[650] break-all">{file.name}</p>
@@ -63,7 +63,7 @@ interface SendingFileProps {
 /** A file on its way, or one that did not get there. */
 export function SendingFile({ name, sent, whole, error, onRetry, onRemove }: SendingFileProps) {
   return (
-    <li className="file-row">
+    <li className="sent-file">
       <span aria-hidden="true" />
       <div>
         <p className="font-[650] break-all">{name}</p>

@@ -7,7 +7,7 @@ const MODES = [
 
 /** Goes over between the studio's forms and a piece of one's own; carries along what the other side was told. */
 export function Modes() {
-  const { fields, live, register, turnTo } = usePriceState();
+  const { fields, live, register, change } = usePriceState();
   const { onBlur, onChange, ref } = register('what');
   return (
     <div className="price-modes" role="group" aria-label="What to price">
@@ -23,7 +23,7 @@ export function Modes() {
           onClick={(event) => {
             if (!live) return;
             event.preventDefault();
-            turnTo({ what });
+            change({ what });
           }}
         >
           {label}

@@ -17,7 +17,7 @@ export interface PieceProps {
 
 /** The piece from the studio's catalogue: which form, its name and period, its picture at the wanted size. */
 export function Piece({ forms, plate }: PieceProps) {
-  const { fields, view, register, turnTo, errorOf } = usePriceState();
+  const { fields, view, register, change, errorOf } = usePriceState();
   const { form } = view.choices;
   const shown = usePlate(form?.slug, plate);
   return (
@@ -29,7 +29,7 @@ export function Piece({ forms, plate }: PieceProps) {
           options={forms.map(({ code, name }) => ({ value: code, label: name }))}
           value={fields.form}
           error={errorOf('form')}
-          registration={register('form', (slug) => turnTo({ form: slug }))}
+          registration={register('form', (slug) => change({ form: slug }))}
         />
       </div>
       <h1 className="mt-6">{form?.name ?? 'Price a piece'}</h1>

@@ -45,7 +45,7 @@ function Sentences({ sentences }: { sentences: readonly string[] }) {
 
 /** Changes to press; each sets the inputs it names. */
 function Levers() {
-  const { estimate, live, set } = usePriceState();
+  const { estimate, live, change } = usePriceState();
   if (!estimate) return null;
   if (estimate.levers.length === 0)
     return <p className="mt-3">Nothing we could name: it is the plainest way already.</p>;
@@ -61,7 +61,7 @@ function Levers() {
             onClick={(event) => {
               if (!live) return;
               event.preventDefault();
-              set(changeText(lever.change));
+              change(changeText(lever.change));
             }}
           >
             <span>{lever.label}</span>{' '}

@@ -30,9 +30,10 @@ export interface Price {
   query: string | null;
   errorOf: (field: EstimateField) => string | undefined;
   register: (field: EstimateField, onChange?: (value: string) => void) => UseFormRegisterReturn;
+  /** Puts figures into inputs. */
   set: (changes: EstimateFields) => void;
-  /** Takes another form, or goes over to a piece of one's own and back. */
-  turnTo: (changes: Pick<EstimateFields, 'what' | 'form'>) => void;
+  /** Makes a change that others follow from: another form, a piece of one's own, a lever. */
+  change: (changes: EstimateFields) => void;
   /** Tells from now on which inputs are missing. */
   press: () => void;
 }
@@ -54,19 +55,16 @@ async function fetchCard(): Promise<RateCard | null> {
   return parsed.success ? parsed.data : null;
 }
 
-/** Runs the price page: inputs, estimate at every change, address, draft. */
-export function usePrice(start: PriceStart): Price {
+/** The inputs, and the rate card once it is here; what this browser kept comes back when nothing was said. */
+function useInputs(start: PriceStart) {
   const [before] = useState(() => ({ ...start.fields, ...typedBefore(PRICE_FORM, TICKS) }));
   const { subscribe, getValues, setValue, register } = useForm<Typed>({ defaultValues: before });
   const [fields, setFields] = useState(start.fields);
   const [card, setCard] = useState<RateCard | null>(null);
-  const [pressed, setPressed] = useState(start.pressed);
-
   const set = (changes: EstimateFields) => {
     for (const [field, value] of Object.entries(changes)) setValue(field as EstimateField, value);
     setFields(textOf(getValues()));
   };
-
   useEffect(() => {
     let gone = false;
     void fetchCard().then((fetched) => {
@@ -88,13 +86,18 @@ export function usePrice(start: PriceStart): Price {
       stop();
     };
   }, [getValues, setValue, subscribe, start]);
+  return { fields, card, set, register };
+}
 
+/** Runs the price page: inputs, estimate at every change, address, draft. */
+export function usePrice(start: PriceStart): Price {
+  const { fields, card, set, register } = useInputs(start);
+  const [pressed, setPressed] = useState(start.pressed);
   const view = useMemo(() => (card ? priceView(fields, card) : start.view), [card, fields, start.view]);
   const query = useMemo(() => (card ? estimateQuery(fields, card) : null), [card, fields]);
   const [estimate, setEstimate] = useState(view.outcome.ok ? view.outcome.value : null);
   if (view.outcome.ok && view.outcome.value !== estimate) setEstimate(view.outcome.value);
   useKept(fields, query);
-
   const problems = view.outcome.ok ? undefined : view.outcome.problem.fields;
   return {
     fields,
@@ -106,7 +109,7 @@ export function usePrice(start: PriceStart): Price {
     register: (field, onChange) =>
       register(field, onChange && { onChange: ({ target }: { target: HTMLInputElement }) => onChange(target.value) }),
     set,
-    turnTo: (changes) => {
+    change: (changes) => {
       if (card) set(settleFields({ ...fields, ...changes }, fields.form, card, fields.form ?? ''));
     },
     press: () => setPressed(true),
