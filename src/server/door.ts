@@ -63,11 +63,23 @@ async function readRaw({ request, url }: DoorContext): Promise<Outcome<Record<st
     if (typeof value !== 'object' || value === null || Array.isArray(value)) {
       return refuse('invalid', 'The request must be one object of named values.');
     }
+    if (!isStorable(value))
+      return refuse(
+        'invalid',
+        'The text holds a character that no text may hold. Type it again instead of pasting it.',
+      );
     READ_TWICE.set(request, value as Record<string, unknown>);
     return done(value as Record<string, unknown>);
   } catch {
     return refuse('invalid', 'The request could not be read: its body is not the JSON or form it says it is.');
   }
+}
+
+/** False for text that PostgreSQL cannot keep: a zero character, or half of a surrogate pair. */
+function isStorable(value: unknown): boolean {
+  if (typeof value === 'string') return !value.includes('\0') && !/\p{Cs}/u.test(value);
+  if (typeof value !== 'object' || value === null) return true;
+  return Object.entries(value).every(([name, item]) => isStorable(name) && isStorable(item));
 }
 
 /** Keeps the text of a body that was read elsewhere (one with a file in it), so that a refusal gives it back. */

@@ -20,6 +20,8 @@ export function checkQuote(
       'conflict',
       'The customer’s address is not confirmed yet, so a quote would reach nobody for certain.',
     );
+  if (commission.deal === 'asking')
+    return refuse('conflict', 'The customer still has your questions open. Quote when the answers are in.');
   const obstacle = rightsObstacle(rights);
   if (obstacle) return refuse('conflict', obstacle);
   const blocking = priced.warnings.filter((warning) => warning.blocking);

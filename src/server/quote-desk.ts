@@ -1,5 +1,6 @@
 import { desc, eq } from 'drizzle-orm';
 import { canonicalJson } from '../commission/canonical-json';
+import type { DealState } from '../commission/deal';
 import { applyDesk } from '../commission/desk-fields';
 import type { Desk } from '../commission/desk';
 import type { Actor } from '../commission/permissions';
@@ -112,8 +113,13 @@ async function keepDraft(
   return done({ version: version + 1, revision });
 }
 
+/** True while a commission's draft may change: until a quote is accepted or the enquiry declined. */
+export function mayStillQuote(deal: DealState): boolean {
+  return ['enquiry', 'asking', 'estimated', 'quoted', 'lapsed'].includes(deal);
+}
+
 function stillOpen(commission: CommissionRow): Outcome<null> {
-  if (['enquiry', 'asking', 'estimated', 'quoted', 'lapsed'].includes(commission.deal)) return done(null);
+  if (mayStillQuote(commission.deal)) return done(null);
   return refuse(
     'conflict',
     'This commission is past quoting, so its draft no longer changes. The accepted quote stands as it was frozen.',
