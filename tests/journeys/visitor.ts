@@ -33,7 +33,7 @@ export class Visitor {
     return this.send('POST', path, { headers: { accept: 'text/html' }, body: new URLSearchParams(fields) });
   }
 
-  private async send(method: string, path: string, init: RequestInit): Promise<Answer> {
+  async send(method: string, path: string, init: RequestInit): Promise<Answer> {
     const cookie = [...this.cookies].map(([name, value]) => `${name}=${value}`).join('; ');
     const headers = { ...(init.headers as Record<string, string>), origin: this.url, ...(cookie ? { cookie } : {}) };
     const response = await fetch(`${this.url}${path}`, { ...init, method, headers, redirect: 'manual' });
