@@ -16,6 +16,8 @@ export interface RunnerFacts {
   reachedOn: Partial<Record<PieceStage | 'sent' | 'approved', string>>;
   /** Attempts broken out so far, and how many of them were scrapped. */
   scrapped: number;
+  /** The pattern waits for the customer's look, or for a new one after changes were asked. */
+  gateA: 'none' | 'open' | 'approved' | 'changes';
   dayWords: (day: string) => string;
 }
 
@@ -50,7 +52,7 @@ export function runnerOf(facts: RunnerFacts): RunnerStep[] {
   const dispatch: RunnerStep = GONE.has(facts.deal)
     ? { name: 'Dispatch', state: 'done', ...noted(facts, facts.reachedOn.sent, 'Sent') }
     : { name: 'Dispatch', state: 'ahead' };
-  return warmFirst([...steps, dispatch]);
+  return warmFirst([...steps, dispatch], facts);
 }
 
 function stepOf(gate: { name: string; stages: PieceStage[] }, facts: RunnerFacts): RunnerStep {
@@ -59,6 +61,8 @@ function stepOf(gate: { name: string; stages: PieceStage[] }, facts: RunnerFacts
   const shares = concerned.map((piece) => shareOf(piece, gate.stages));
   const through = shares.filter((share) => share === 1).length;
   const share = shares.reduce((sum, each) => sum + each, 0) / shares.length;
+  if (gate.name === 'Pattern' && facts.gateA === 'open')
+    return { name: gate.name, state: 'ahead', share: 0.9, note: 'Waiting for your look' };
   if (through === concerned.length) {
     const last = [...gate.stages].reverse().find((stage) => facts.reachedOn[stage]);
     return {
@@ -90,10 +94,14 @@ function noted(facts: RunnerFacts, day: string | undefined, words: string): { no
   return { note: day ? `${words} ${facts.dayWords(day)}` : words };
 }
 
-/** The first gate not yet passed is the hot one. */
-function warmFirst(steps: RunnerStep[]): RunnerStep[] {
+/** The first gate not yet passed is the hot one; after a failed pour it says that it is passed again. */
+function warmFirst(steps: RunnerStep[], facts: RunnerFacts): RunnerStep[] {
   const hot = steps.findIndex((step) => step.state === 'ahead');
-  return steps.map((step, index) =>
-    index === hot ? { ...step, state: 'hot' as const, share: Math.max(0.15, step.share ?? 0) } : step,
-  );
+  return steps.map((step, index) => {
+    if (index !== hot) return step;
+    const again =
+      facts.scrapped > 0 && (step.name === 'Mould' || step.name === 'Pour') ? 'Again, at no charge' : undefined;
+    const note = step.note ?? again;
+    return { ...step, state: 'hot', share: Math.max(0.15, step.share ?? 0), ...(note ? { note } : {}) };
+  });
 }

@@ -71,16 +71,22 @@ export async function readCustomerMaking(
     .from(ledgerEntries)
     .where(eq(ledgerEntries.commissionId, row.id))
     .orderBy(desc(ledgerEntries.at));
+  const gate = await gateOf(db, row.id, shown);
+  const waiting = new Set(gate?.state === 'open' ? gate.photos.map((photo) => photo.id) : []);
   return {
     runner: runnerOf({
+      gateA: gate?.state ?? 'none',
       deal: row.deal,
       pieces,
       reachedOn: daysReached(lines),
       scrapped: attempts.filter((each) => each.result === 'scrapped').length,
       dayWords,
     }),
-    news: newsOf(shown, lines),
-    gate: await gateOf(db, row.id, shown),
+    news: newsOf(
+      shown.filter(({ photo }) => !waiting.has(photo.id)),
+      lines,
+    ),
+    gate,
     measured: pieces.flatMap(({ number, measured }) =>
       measured?.massG
         ? [
