@@ -70,6 +70,9 @@ export function isOpen(state: DealState): boolean {
   return !['closed', 'declined', 'lapsed', 'cancelled'].includes(state);
 }
 
+/** States in which the commission ended without a piece: nothing is payable and nothing left to decide. */
+export const ENDED_STATES: ReadonlySet<DealState> = new Set(['lapsed', 'cancelled', 'declined']);
+
 /** The state in a reader's words. */
 export const DEAL_WORDS: Record<DealState, string> = {
   enquiry: 'Enquiry',

@@ -1,6 +1,7 @@
 import { desc, eq } from 'drizzle-orm';
 import Stripe from 'stripe';
 import { z } from 'zod';
+import { ENDED_STATES } from '../commission/deal';
 import type { Actor } from '../commission/permissions';
 import { done, refuse, type Outcome } from '../commission/problem';
 import type { StageBalance } from '../commission/balance';
@@ -8,7 +9,6 @@ import { keepSession, type CheckoutRow } from './checkout-sessions';
 import { findCommission, type CommissionRow } from './commissions';
 import { checkoutSessions } from './db/schema/quotes';
 import { acceptedStages, readBalance, type StagePayment } from './ledger';
-import { ENDED } from './payment-misfit';
 import { reconcileSession } from './payments';
 import type { Services } from './services';
 import { createOnce, isAway, payLater } from './stripe/provider';
@@ -46,7 +46,7 @@ export async function startCheckout(
   const found = await findCommission(services, actor, ref, 'payment:pay');
   if (!found.ok) return found;
   const commission = found.value;
-  if (ENDED.has(commission.deal))
+  if (ENDED_STATES.has(commission.deal))
     return refuse(
       'conflict',
       `This commission is ${commission.deal}, so nothing is owed on it. Write to us to take it up.`,

@@ -2,6 +2,7 @@ import { createHash } from 'node:crypto';
 import { and, asc, desc, eq, gt, inArray } from 'drizzle-orm';
 import { uuidv7 } from 'uuidv7';
 import { z } from 'zod';
+import { ENDED_STATES } from '../commission/deal';
 import type { Actor } from '../commission/permissions';
 import { done, refuse, type Outcome } from '../commission/problem';
 import { findCommission, lockCommission, type CommissionRow } from './commissions';
@@ -10,7 +11,6 @@ import { gates, photos, pieces } from './db/schema/making';
 import { queueGateMail, queueGateDecidedMail } from './gate-mails';
 import { recordEvent } from './history';
 import { acceptedStages, callInStages } from './ledger';
-import { ENDED } from './payment-misfit';
 import type { Services } from './services';
 
 export type GateRow = typeof gates.$inferSelect;
@@ -121,7 +121,7 @@ export async function decideGate(
   const now = services.now();
   return services.db.transaction(async (tx) => {
     const commission = await lockCommission(tx, found.value.id);
-    if (ENDED.has(commission.deal))
+    if (ENDED_STATES.has(commission.deal))
       return refuse(
         'conflict',
         `This commission is ${commission.deal}, so there is nothing to decide. Write to us to take it up.`,

@@ -110,7 +110,7 @@ async function lastMoved({ db }: Services): Promise<MovedLine[]> {
     .from(ledgerEntries)
     .innerJoin(commissions, eq(commissions.id, ledgerEntries.commissionId))
     .leftJoin(stagePayments, eq(stagePayments.id, ledgerEntries.stagePaymentId))
-    .orderBy(desc(ledgerEntries.at))
+    .orderBy(desc(ledgerEntries.at), desc(ledgerEntries.id))
     .limit(50);
   return rows.map(({ entry, ref, label }) => ({
     at: entry.at.toISOString(),

@@ -1,6 +1,6 @@
 import { and, eq } from 'drizzle-orm';
 import { uuidv7 } from 'uuidv7';
-import type { DealState } from '../commission/deal';
+import { ENDED_STATES } from '../commission/deal';
 import type { Problem } from '../commission/problem';
 import type { CommissionRow } from './commissions';
 import type { Transaction } from './db/client';
@@ -8,9 +8,6 @@ import { tray } from './db/schema/commissions';
 import { quotes, stagePayments } from './db/schema/quotes';
 import { recordEvent } from './history';
 import { readBalance } from './ledger';
-
-/** Deals that have ended without a piece: nothing is payable on them. */
-export const ENDED: ReadonlySet<DealState> = new Set(['lapsed', 'cancelled', 'declined']);
 
 /** What came in, in minor units of `currency`. */
 export interface Incoming {
@@ -43,7 +40,7 @@ export async function findMisfit(
       code: 'stale',
       message: `Money came in for revision ${row.revision}, which is no longer in force. Refund it, or ask the customer to accept the current quote.`,
     };
-  if (ENDED.has(commission.deal))
+  if (ENDED_STATES.has(commission.deal))
     return {
       code: 'stale',
       message: `Money came in for a commission that is ${commission.deal}. Refund it, or agree with the customer to take the commission up again.`,
