@@ -1,4 +1,4 @@
-import type { Drawing } from '../../casting/drawing';
+import type { Drawing, Knop } from '../../casting/drawing';
 import { sectionPolygon, type Point } from '../../casting/plate/section';
 import { hollowSweep, slicesOf, type Slice, type Sweep } from '../../casting/plate/sweep';
 
@@ -79,15 +79,30 @@ function walls(rings: Rings, out: boolean): Triangle[] {
   return rings.slice(1).flatMap((ring, i) => skin(rings[i]!, ring, out));
 }
 
-/** The outer skin of every body, for a picture: no hollows, mirrored parts on both sides. */
-export function skinsOf(drawing: Drawing, slices = 120): Triangle[] {
-  return drawing.bodies.flatMap((body) => {
+/** A pointed boss: four faces from its foot to its tip. */
+function bossOf({ at, angle, foot, tip, along, spread }: Knop): Triangle[] {
+  const turn = (angle * Math.PI) / 180;
+  const [sin, cos] = [Math.sin(turn), Math.cos(turn)];
+  const peak: Vec = [at, tip * sin, tip * cos];
+  const feet: Vec[] = [
+    [at - along, foot * sin, foot * cos],
+    [at, foot * sin + spread * cos, foot * cos - spread * sin],
+    [at + along, foot * sin, foot * cos],
+    [at, foot * sin - spread * cos, foot * cos + spread * sin],
+  ];
+  return feet.map((p, i): Triangle => [p, feet[(i + 1) % feet.length]!, peak]);
+}
+
+/** The outer skin of every body and boss, for a picture: no hollows, mirrored parts on both sides. */
+export function skinsOf(drawing: Pick<Drawing, 'bodies' | 'sections' | 'knops'>, slices = 120): Triangle[] {
+  const bodies = drawing.bodies.flatMap((body) => {
     const rings = ringsOf(body, drawing.sections, slices);
     const mirrored = rings.map((ring) => ring.map(([x, y, z]): Vec => [x, -y, z]));
     const one = [...walls(rings, true), ...lid(rings[0]!, false), ...lid(rings.at(-1)!, true)];
     if (!body.mirrored) return one;
     return [...one, ...walls(mirrored, false), ...lid(mirrored[0]!, true), ...lid(mirrored.at(-1)!, false)];
   });
+  return [...bodies, ...drawing.knops.flatMap(bossOf)];
 }
 
 /** The first body as one closed solid, its socket left open at the start: what a 3D file of the piece holds. */
