@@ -1,5 +1,5 @@
-import { useEffect, useRef, useState } from 'react';
-import { useForm, useWatch } from 'react-hook-form';
+import { useEffect, useState } from 'react';
+import { useForm } from 'react-hook-form';
 import { BLANK_LINE, type DeskFields } from '../../commission/desk-fields';
 import type { Problem } from '../../commission/problem';
 import type { QuoteDraft } from '../../commission/quote-draft';
@@ -144,33 +144,48 @@ interface Standing {
   said: string;
 }
 
+/** What the desk shows: its fields, how they read, and the rows of its table. */
+interface Seen {
+  values: DeskFields;
+  reading: DeskReading;
+  rows: DeskFields['lines'];
+}
+
+function lookAgain(draft: QuoteDraft, values: DeskFields, before: Seen): Seen {
+  const last = values.lines[before.rows.length - 1];
+  const isFull = (last?.label ?? '').trim() !== '';
+  return {
+    values,
+    reading: readDesk(draft, values, before.reading),
+    rows: isFull ? [...before.rows, BLANK_LINE] : before.rows,
+  };
+}
+
 /** The desk's state: the form, its reading at each change, and what came of the last press. */
 function useDesk(props: QuoteDeskProps) {
-  const [start] = useState(() => typedBefore(FORM, props.fields));
+  const { draft, fields } = props;
+  const [start] = useState(() => typedBefore(FORM, fields));
   const form = useForm<DeskFields>({ defaultValues: start });
-  const watched = useWatch({ control: form.control }) as DeskFields;
-  const [isHere, setIsHere] = useState(false);
-  useEffect(() => setIsHere(true), []);
-  const values = isHere ? watched : props.fields;
-  const last = useRef<DeskReading>(undefined);
-  const reading = readDesk(props.draft, values, last.current);
+  const [seen, setSeen] = useState<Seen>(() => ({
+    values: fields,
+    reading: readDesk(draft, fields),
+    rows: fields.lines,
+  }));
   useEffect(() => {
-    last.current = reading;
-  });
-  const [rows, setRows] = useState(props.fields.lines);
-  const isLastFilled = (watched.lines?.[rows.length - 1]?.label ?? '').trim() !== '';
-  useEffect(() => {
-    if (isLastFilled) setRows((before) => [...before, BLANK_LINE]);
-  }, [isLastFilled]);
+    const look = (values: DeskFields) => setSeen((before) => lookAgain(draft, structuredClone(values), before));
+    // What was typed before this script came is read as soon as the first drawing is done.
+    queueMicrotask(() => look(form.getValues()));
+    return form.subscribe({ formState: { values: true }, callback: ({ values }) => look(values) });
+  }, [draft, form]);
   const [standing, setStanding] = useState<Standing>({
-    version: Number(props.fields.version),
+    version: Number(fields.version),
     revision: props.revision,
     problem: props.problem,
     review: props.review,
     said: '',
   });
   const submit = useSubmit(props, form.getValues, standing, setStanding);
-  return { form, values, reading, rows, standing, submit };
+  return { form, ...seen, standing, submit };
 }
 
 function useSubmit(

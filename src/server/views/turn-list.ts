@@ -1,4 +1,4 @@
-import { and, desc, eq, inArray, isNotNull, notInArray, or, gt } from 'drizzle-orm';
+import { and, desc, gt, inArray, isNotNull, notInArray, or } from 'drizzle-orm';
 import { DEAL_WORDS, type DealState } from '../../commission/deal';
 import { may, type Actor } from '../../commission/permissions';
 import { done, refuse, type Outcome } from '../../commission/problem';

@@ -1,0 +1,75 @@
+import { afterAll, beforeAll, describe, expect, it } from 'vitest';
+import { deskSchema } from '../../../src/commission/desk';
+import { deskFields } from '../../../src/commission/desk-fields';
+import { swordFromFile } from '../../../src/demo/drafts';
+import { openDesk, saveDraft } from '../../../src/server/quote-desk';
+import { sendQuote, withdrawQuote } from '../../../src/server/quotes';
+import { codeOf, commission, deskOf, newEnquiry, openSetting, typedOver, type Setting } from './deal-setting';
+
+let setting: Setting;
+beforeAll(async () => {
+  setting = await openSetting();
+});
+afterAll(() => setting.drop());
+
+describe('the quote desk', () => {
+  it('shows and reads back every figure of a draft without changing one', () => {
+    const draft = {
+      ...swordFromFile(),
+      price: { kind: 'own' as const, workMinor: 230_000, reason: 'Known customer.' },
+    };
+    expect(typedOver(draft)).toEqual(draft);
+  });
+
+  it('opens with the estimate’s own draft and the range the customer was shown', async () => {
+    const { services, owner } = setting;
+    const ref = await newEnquiry(setting);
+    const desk = await openDesk(services, owner, ref);
+    const { rangeMinor } = (await commission(setting, ref)).estimate as { rangeMinor: { low: number; high: number } };
+    expect(desk).toMatchObject({ ok: true, value: { version: 0, revision: 1 } });
+    expect(desk.ok && desk.value.draft.shownRange).toEqual({ lowMinor: rangeMinor.low, highMinor: rangeMinor.high });
+  });
+
+  it('saves over the version it read, and never over another window’s', async () => {
+    const { services, owner } = setting;
+    const ref = await newEnquiry(setting);
+    const desk = await openDesk(services, owner, ref);
+    if (!desk.ok) throw new Error(desk.problem.message);
+    const { draft } = desk.value;
+    const first = deskOf({ ...draft, title: 'First window' }, 0);
+    const second = deskOf({ ...draft, title: 'Second window' }, 0);
+    expect(await saveDraft(services, owner, ref, first)).toEqual({ ok: true, value: { version: 1, revision: 1 } });
+    expect(await saveDraft(services, owner, ref, first)).toEqual({ ok: true, value: { version: 1, revision: 1 } });
+    expect(codeOf(await saveDraft(services, owner, ref, second))).toBe('stale');
+    expect(codeOf(await saveDraft(services, owner, ref, { ...second, version: 1 }))).toBe('ok');
+  });
+
+  it('reads a plain form: hours and whole units, a blank row and a row left out', () => {
+    const draft = swordFromFile();
+    const { lines, ...fields } = deskFields(draft, 3);
+    const typed: Record<string, string> = { ...fields, margin: '25' };
+    lines.forEach((line, index) => {
+      for (const [name, value] of Object.entries(line)) typed[`lines.${index}.${name}`] = String(value);
+    });
+    typed['lines.0.drop'] = 'yes';
+    typed['lines.1.minutes'] = '2,5';
+    typed['lines.1.materialsMinor'] = '1,234.50';
+    const desk = deskSchema.parse(typed);
+    expect(desk.lines).toHaveLength(draft.lines.length - 1);
+    expect(desk.lines[0]).toMatchObject({ minutes: 150, materialsMinor: 123_450 });
+    expect(desk).toMatchObject({ version: 3, margin: 0.25 });
+    const wrong = deskSchema.safeParse({ ...typed, 'lines.2.minutes': 'two' });
+    expect(wrong.success ? [] : wrong.error.issues.map((issue) => issue.path.join('.'))).toContain('lines.2.minutes');
+  });
+
+  it('is the owners’ alone', async () => {
+    const ref = await newEnquiry(setting);
+    const { services, customer, other, maker, bookkeeper } = setting;
+    for (const actor of [customer, other, maker, bookkeeper, null]) {
+      expect(codeOf(await openDesk(services, actor, ref))).not.toBe('ok');
+      expect(codeOf(await saveDraft(services, actor, ref, deskOf(swordFromFile(), 0)))).not.toBe('ok');
+      expect(codeOf(await sendQuote(services, actor, ref, { version: 1, revision: 1, freeze: true }))).not.toBe('ok');
+      expect(codeOf(await withdrawQuote(services, actor, ref, 1, {}))).not.toBe('ok');
+    }
+  });
+});
