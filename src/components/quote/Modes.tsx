@@ -8,10 +8,9 @@ const MODES = [
 /** Goes over between the studio's forms and a piece of one's own; carries along what the other side was told. */
 export function Modes() {
   const { fields, live, register, change } = usePriceState();
-  const { onBlur, onChange, ref } = register('what');
   return (
     <div className="price-modes" role="group" aria-label="What to price">
-      <input type="hidden" name="what" defaultValue={fields.what} onBlur={onBlur} onChange={onChange} ref={ref} />
+      <input type="hidden" defaultValue={fields.what} {...register('what')} />
       {MODES.map(({ what, label }) => (
         <button
           key={what}

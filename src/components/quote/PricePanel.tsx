@@ -3,10 +3,12 @@ import { moneyWords, rangeWords, shownMinor, taxWords, weeksWords } from '../../
 import { Distribution } from '../ui/Distribution';
 import { usePriceState } from './price-context';
 
+const UNTOLD = 'The price stands here as soon as the mass or a measured file, the longest and the thinnest are known.';
+
 /** The price: range, what pieces like this come to, first payment, weeks, and the way to a firm quote. */
 export function PricePanel() {
-  const { estimate, view } = usePriceState();
-  const problem = view.outcome.ok ? null : view.outcome.problem;
+  const { estimate, view, untold } = usePriceState();
+  const problem = view.outcome.ok ? null : untold ? UNTOLD : view.outcome.problem.message;
   return (
     <section aria-labelledby="price-heading" id="price">
       <div className="panel-dark price-panel">
@@ -15,7 +17,7 @@ export function PricePanel() {
         </h2>
         {problem && (
           <p className="mt-2 mb-3" role={estimate ? 'status' : undefined}>
-            {estimate ? `Not yet for what stands here: ${problem.message}` : problem.message}
+            {estimate ? `Not yet for what stands here: ${problem}` : problem}
           </p>
         )}
         {estimate && <Figures estimate={estimate} />}

@@ -24,6 +24,8 @@ export interface Price {
   view: PriceView;
   /** The estimate, or the last one there was while the inputs allow none. */
   estimate: Estimate | null;
+  /** True while only inputs are missing that nobody has come to yet. */
+  untold: boolean;
   /** True once the page reckons by itself; before that its form is sent to the server. */
   live: boolean;
   /** The inputs as the page's address has them; null before the page reckons by itself. */
@@ -95,17 +97,18 @@ export function usePrice(start: PriceStart): Price {
   const [pressed, setPressed] = useState(start.pressed);
   const view = useMemo(() => (card ? priceView(fields, card) : start.view), [card, fields, start.view]);
   const query = useMemo(() => (card ? estimateQuery(fields, card) : null), [card, fields]);
-  const [estimate, setEstimate] = useState(view.outcome.ok ? view.outcome.value : null);
-  if (view.outcome.ok && view.outcome.value !== estimate) setEstimate(view.outcome.value);
+  const estimate = useLastEstimate(view, fields.what);
   useKept(fields, query);
-  const problems = view.outcome.ok ? undefined : view.outcome.problem.fields;
+  const problems = view.outcome.ok ? {} : (view.outcome.problem.fields ?? {});
+  const said = (field: string) => Boolean(pressed || fields[field as EstimateField]);
   return {
     fields,
     view,
     estimate,
     live: card !== null,
     query,
-    errorOf: (field) => (pressed || fields[field] ? problems?.[field] : undefined),
+    untold: !view.outcome.ok && Object.keys(problems).length > 0 && !Object.keys(problems).some(said),
+    errorOf: (field) => (said(field) ? problems[field] : undefined),
     register: (field, onChange) =>
       register(field, onChange && { onChange: ({ target }: { target: HTMLInputElement }) => onChange(target.value) }),
     set,
@@ -114,6 +117,14 @@ export function usePrice(start: PriceStart): Price {
     },
     press: () => setPressed(true),
   };
+}
+
+/** The estimate, or the last one there was for a piece of this kind. */
+function useLastEstimate({ outcome }: PriceView, what: string | undefined): Estimate | null {
+  const [last, setLast] = useState({ what, estimate: outcome.ok ? outcome.value : null });
+  if (outcome.ok && outcome.value !== last.estimate) setLast({ what, estimate: outcome.value });
+  if (outcome.ok) return outcome.value;
+  return last.what === what ? last.estimate : null;
 }
 
 /** Keeps the inputs in the page's address and in this browser, a moment after the last change. */
