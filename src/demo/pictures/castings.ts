@@ -6,7 +6,7 @@ import type { Stock } from './stock';
 /** A wax or casting a little over its size all round, mm: a shell, or metal before the file. */
 export function swollen(mesh: Mesh, by: number, rough = 0): Mesh {
   return bent(mesh, ([x, y, z], [nx, ny, nz]) => {
-    const k = by + (noise(x * 0.35 + 20, y * 0.35 + z * 0.3 + 20) - 0.5) * rough;
+    const k = by + (noise(x * 0.14 + 20, y * 0.2 + z * 0.2 + 20) - 0.5) * rough;
     return [x + nx * k, y + ny * k, z + nz * k];
   });
 }
@@ -34,9 +34,9 @@ export function withStub({ mesh, low }: Stock, radius: number): Mesh {
 export function misrun({ mesh, high }: Stock, short: number): Mesh {
   const end = high[0] - short;
   return bent(mesh, ([x, y, z]): Vec => {
-    const edge = end - 7 + noise(y * 0.22 + 11, 3) * 17 - y * y * 0.035 + noise(y * 0.9, 8) * 3;
-    if (x < edge - 7) return [x, y, z];
-    const left = Math.max(0, 1 - Math.max(0, x - (edge - 7)) / 7);
+    const edge = end - 4 + noise(y * 0.1 + 11, 3) * 11 - y * y * 0.04;
+    if (x < edge - 5) return [x, y, z];
+    const left = Math.max(0, 1 - Math.max(0, x - (edge - 5)) / 5);
     return [Math.min(x, edge), y, z * Math.sqrt(1 - (1 - left) ** 2)];
   });
 }

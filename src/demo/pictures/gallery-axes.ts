@@ -1,3 +1,4 @@
+import { smoothThrough } from '../../casting/plate/sweep';
 import { hollowOf, swollen, withStub } from './castings';
 import { type Flask, withFlasks } from './flask';
 import { pouredCups } from './gallery-swords';
@@ -23,7 +24,11 @@ function openMould({ mesh, low, high }: Stock, axisUp = 0): Scene {
     const middle = (low[0] + high[0]) / 2;
     return { mesh: half, material: 'cavity', sunk: true, turn: Math.PI / 2, at: [flask.x, flask.y - middle], lift: 0 };
   });
-  const camera = { middle: [0, 4] as [number, number], pxPerMm: 1080 / (halfWide * 5.4), tilt: 0.3 };
+  const camera = {
+    middle: [0, 4] as [number, number],
+    pxPerMm: Math.min(1080 / (halfWide * 5.4), 720 / (halfHigh * 2.5)),
+    tilt: 0.3,
+  };
   return { ground: withFlasks(flasks), camera, things, over: () => [] };
 }
 
@@ -65,7 +70,8 @@ function coldShut(stock: Stock): Scene {
     ground: 'board',
     framing: { fill: 0.8, shift: [0, -0.05] },
     bar: true,
-    over: (camera, [thing]) => [0.9, 1.3].map((width) => groove(seam, stock.high[2] * 0.5, thing!, camera, width)),
+    over: (camera, [thing]) =>
+      [0.6, 0.9].map((width) => groove(smoothThrough(seam), stock.high[2] * 0.5, thing!, camera, width)),
   });
 }
 

@@ -85,7 +85,7 @@ export function smallPictures(stocks: Stocks): [string, () => Scene][] {
     ['spears-final', () => spears(spear, 'bright', 'cloth', false)],
     ['mace-wax', () => mace(head, 0)],
     ['mace-wax-turned', () => mace(head, -52)],
-    ['mace-wax-close', () => mace(head, 8, { at: [38, 14], wide: 62 })],
-    ['mace-wax-mark', () => mace(head, -78, { at: [6, 0], wide: 58 }, true)],
+    ['mace-wax-close', () => mace(head, 8, { at: [38, 4], wide: 74 })],
+    ['mace-wax-mark', () => mace(head, -62, { at: [10, 0], wide: 74 }, true)],
   ];
 }

@@ -35,7 +35,7 @@ function waxes(
 }
 
 function shell(stock: Stock): Scene {
-  const mesh = swollen(withGates(stock, 7, 26), 6.5, 5);
+  const mesh = swollen(withGates(stock, 7, 26), 7, 4);
   const things = [lying(mesh, 'shell', [0, 0], -17)];
   return { ground: 'slate', camera: framed(things, { fill: 0.84, tilt: 0.5 }), things, over: () => [] };
 }
@@ -58,7 +58,7 @@ export function pouredCups(places: readonly [number, number][], radius: number, 
 }
 
 function failed(stock: Stock, close: boolean): Scene {
-  const mesh = swollen(withGates({ ...stock, mesh: misrun(stock, 48) }, 7, 26), 0.5, 0.9);
+  const mesh = swollen(withGates({ ...stock, mesh: misrun(stock, 48) }, 7, 26), 0.6, 1.6);
   const shown: Shown = { stock, mesh, material: 'cast', degrees: close ? -22 : 14, plain: true };
   if (close) return onTheBench([shown], { ground: 'slate', close: { at: [556, 0], wide: 165 }, bar: true });
   return onTheBench([shown], { ground: 'slate', framing: { fill: 0.86, shift: [0, -0.04] }, bar: true });

@@ -20,15 +20,15 @@ interface Material {
 }
 
 const MATERIALS: Record<MaterialName, Material> = {
-  bright: { base: [0.93, 0.62, 0.27], mirror: 0.9, gloss: 22, rough: 0.07, grain: [0.16, 3.2], mottle: 0.05 },
-  filed: { base: [0.78, 0.52, 0.235], mirror: 0.6, gloss: 10, rough: 0.2, grain: [0.22, 3.6], mottle: 0.1 },
+  bright: { base: [1.06, 0.64, 0.235], mirror: 0.9, gloss: 20, rough: 0.07, grain: [0.16, 3.2], mottle: 0.05 },
+  filed: { base: [0.9, 0.55, 0.21], mirror: 0.6, gloss: 10, rough: 0.2, grain: [0.22, 3.6], mottle: 0.1 },
   cast: { base: [0.33, 0.215, 0.125], mirror: 0.26, gloss: 5, rough: 0.3, grain: [0.42, 0.42], mottle: 0.5 },
   stained: { base: [0.55, 0.38, 0.19], mirror: 0.42, gloss: 8, rough: 0.14, grain: [0.3, 2.4], mottle: 0.3 },
   wax: { base: [0.4, 0.13, 0.085], mirror: 0.1, gloss: 18, rough: 0.1, grain: [0.5, 0.8], mottle: 0.1 },
   shell: { base: [0.74, 0.7, 0.62], mirror: 0, gloss: 4, rough: 0.75, grain: [1.1, 1.1], mottle: 0.16 },
   wood: { base: [0.5, 0.33, 0.18], mirror: 0.05, gloss: 8, rough: 0.2, grain: [1.6, 0.06], mottle: 0.4 },
   cord: { base: [0.56, 0.47, 0.33], mirror: 0, gloss: 4, rough: 0.5, grain: [1.4, 1.4], mottle: 0.2 },
-  cavity: { base: [0.36, 0.29, 0.2], mirror: 0, gloss: 4, rough: 0.5, grain: [1.5, 1.5], mottle: 0.2 },
+  cavity: { base: [0.27, 0.2, 0.125], mirror: 0, gloss: 4, rough: 0.34, grain: [1.9, 1.9], mottle: 0.16 },
   iron: { base: [0.2, 0.21, 0.22], mirror: 0.3, gloss: 8, rough: 0.3, grain: [0.6, 0.6], mottle: 0.2 },
 };
 
@@ -40,8 +40,8 @@ const RIM: Vec = [0.78, 0.1, 0.62];
 function room(x: number, y: number, z: number, gloss: number): number {
   const window = Math.max(0, x * LIGHT[0] + y * LIGHT[1] + z * LIGHT[2]);
   const lamp = Math.max(0, x * RIM[0] + y * RIM[1] + z * RIM[2]);
-  const sky = 0.13 + 0.2 * Math.max(0, z) - 0.16 * y;
-  return sky + 1.5 * window ** gloss + 0.62 * window ** 3.2 + 0.4 * lamp ** (gloss * 0.7);
+  const sky = 0.15 + 0.26 * Math.max(0, z) - 0.17 * y;
+  return sky + 1.5 * window ** gloss + 0.86 * window ** 3 + 0.4 * lamp ** (gloss * 0.7);
 }
 
 /** A spot of a piece: where it is on the piece (mm), and where in the picture (-0.5 to 0.5). */

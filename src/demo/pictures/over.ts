@@ -95,19 +95,19 @@ export function bar(at: [number, number], camera: Camera): string {
   const block = 10;
   const tall = 4.5;
   const spot: Spot = { at: [0, 0], turn: 0, lift: 0 };
-  const box = (from: number, to: number, fill: string) => {
+  const box = (from: number, to: number, fill: string, rim = 0) => {
     const [x, y] = [at[0], -at[1]];
     const corners: [number, number][] = [
-      [x + from, y],
-      [x + to, y],
-      [x + to, y - tall],
-      [x + from, y - tall],
+      [x + from, y + rim],
+      [x + to, y + rim],
+      [x + to, y - tall - rim],
+      [x + from, y - tall - rim],
     ];
     return `<path d="${pathOf(screen(corners, 0, spot, camera), true)}" fill="${fill}"/>`;
   };
-  const ground = box(-1.2, 5 * block + 1.2, '#14181a');
+  const ground = box(-0.8, 5 * block + 0.8, '#e9e4d8');
   return (
-    ground + [0, 1, 2, 3, 4].map((i) => box(i * block, (i + 1) * block, i % 2 === 0 ? '#e9e4d8' : '#2b2f31')).join('')
+    ground + [0, 1, 2, 3, 4].map((i) => box(i * block, (i + 1) * block, i % 2 === 0 ? '#e9e4d8' : '#1a1d1f')).join('')
   );
 }
 
@@ -121,6 +121,6 @@ export function glow(at: [number, number], radius: number, camera: Camera, id: s
     `<radialGradient id="${id}b"><stop offset="0" stop-color="#fff3c4"/><stop offset=".55" stop-color="#ffc24d"/><stop offset=".86" stop-color="#ff7a12"/><stop offset="1" stop-color="#b93a04"/></radialGradient></defs>` +
     `<ellipse cx="${fixed(x)}" cy="${fixed(y)}" rx="${fixed(r * 4.2)}" ry="${fixed(r * 4.2 * flat)}" fill="url(#${id}a)"/>` +
     `<ellipse cx="${fixed(x)}" cy="${fixed(y)}" rx="${fixed(r)}" ry="${fixed(r * flat)}" fill="url(#${id}b)" stroke="#2a0d02" stroke-opacity=".7" stroke-width="${fixed(r * 0.09)}"/>` +
-    `<path d="M${fixed(x - r * 0.5)} ${fixed(y + r * 0.16)}q${fixed(r * 0.3)} ${fixed(-r * 0.22)} ${fixed(r * 0.62)} ${fixed(-r * 0.05)}" fill="none" stroke="#7a2703" stroke-opacity=".55" stroke-width="${fixed(r * 0.05)}"/>`
+    `<path transform="rotate(${(id.length > 1 ? Number(id.slice(1)) : 0) * 47} ${fixed(x)} ${fixed(y)})" d="M${fixed(x - r * 0.5)} ${fixed(y + r * 0.16)}q${fixed(r * 0.3)} ${fixed(-r * 0.22)} ${fixed(r * 0.62)} ${fixed(-r * 0.05)}" fill="none" stroke="#7a2703" stroke-opacity=".55" stroke-width="${fixed(r * 0.05)}"/>`
   );
 }

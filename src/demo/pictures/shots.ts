@@ -58,11 +58,14 @@ function drawn({ stock, holes = 'open', mark: stamped, plain }: Shown, thing: Th
 
 function closeUp(thing: Thing, stock: Stock, { at, wide }: { at: [number, number]; wide: number }): Camera {
   const pxPerMm = WIDTH / wide;
-  const first: Camera = { middle: [0, 0], pxPerMm, tilt: 0.42 };
   const target = place([at[0], at[1], stock.high[2] * 0.5], thing);
-  const [x, y] = project(target, first);
-  const middle = onBench(x, y, first);
-  return { ...first, middle };
+  let camera: Camera = { middle: [0, 0], pxPerMm, tilt: 0.42 };
+  for (let pass = 0; pass < 4; pass += 1) {
+    const [x, y] = project(target, camera);
+    const [right, down] = [(x - WIDTH / 2) / pxPerMm, (y - HEIGHT / 2) / pxPerMm / Math.cos(camera.tilt)];
+    camera = { ...camera, middle: [camera.middle[0] + right, camera.middle[1] + down] };
+  }
+  return camera;
 }
 
 /** Left end of the bar: under the pieces, or in the lower corner of a close view. */

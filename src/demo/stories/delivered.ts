@@ -33,7 +33,7 @@ export const socketedAxe: Step[] = [
     {
       picture: 'axe-pattern',
       stage: 'pattern',
-      caption: 'The studio’s pattern with your mark on the side below the loop, bar 50 mm',
+      caption: 'The studio’s pattern with its mark on the face near the edge, bar 50 mm',
       alt: 'A reddish-brown pattern of a socketed axe with a loop lies on a slate; a bar of 50 mm lies below it.',
     },
   ]),
@@ -112,7 +112,7 @@ export const rivetedDagger: Step[] = [
       picture: 'dagger-final',
       stage: 'inspected',
       caption: 'Finished and hilted, 208 g without the hilt',
-      alt: 'A bright bronze dagger blade with a row of rivets lies on dark cloth.',
+      alt: 'A bright bronze dagger with a wooden hilt held by a curved row of rivets lies on dark cloth.',
     },
   ]),
   step(ago(82, '17:00'), (world) => finish(world, DAGGER)),
@@ -164,7 +164,7 @@ async function openRework(world: World): Promise<void> {
     picture: 'dagger-back',
     stage: 'finished',
     caption: 'As it came back: stained along one face',
-    alt: 'The dagger blade, dull and stained greenish along one side, on a grey board with a bar of 50 mm.',
+    alt: 'The dagger with its hilt on; the blade is dull and stained green along one side. A bar of 50 mm lies below it.',
   });
   const rate = 0.2;
   const { netMinor, taxMinor, grossMinor } = sumDocument([

@@ -116,7 +116,7 @@ async function pourAll(world: World): Promise<void> {
     picture: 'palstaves-poured',
     stage: 'poured',
     caption: 'Seven cups, one heat',
-    alt: 'A row of glowing orange discs of metal in dark sand.',
+    alt: 'Seven glowing orange discs of metal in dark sand, in two rows.',
   });
   await reach(world, PARK, 'juno', 'poured', { heatNo: HEAT, massG: 800 });
   await services.db.update(attempts).set({ pouredAt: services.now(), heatNo: HEAT, pouredMassG: 800 }).where(spare(id));
@@ -194,8 +194,8 @@ export const maceHead: Step[] = [
     {
       picture: 'mace-wax-mark',
       stage: 'pattern',
-      caption: 'The mark: on the lower rim of the socket',
-      alt: 'Close view of the wax mace head’s lower rim with a small mark of a reed between two dots.',
+      caption: 'The mark: above the lower rim of the socket',
+      alt: 'Close view of the end of the wax mace head; above its rim stands a small mark of a reed between two dots.',
     },
   ]),
 ];

@@ -231,7 +231,7 @@ export const leafShapedSword: Step[] = [
       picture: 'isolde-shell',
       stage: 'mould',
       caption: 'The shell after its last coat, pouring cup at the grip',
-      alt: 'A rough off-white ceramic shell in the shape of a sword with a wide cup at one end stands against a dark wall.',
+      alt: 'A rough off-white ceramic shell in the shape of a sword with a wide cup at one end lies on dark slate.',
     });
     await reach(world, SWORD, 'juno', 'mould', { note: 'Shell of seven coats, burnt out overnight' });
   }),
