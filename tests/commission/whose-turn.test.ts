@@ -115,7 +115,15 @@ describe('the list by turn', () => {
       row('e', 'agreed', -2, { payment: deposit }),
       row('f', 'closed', -90),
     ]);
-    const refs = Object.fromEntries(Object.entries(lists).map(([name, rows]) => [name, rows.map((each) => each.ref)]));
+    const refsOf = (rows: { ref: string }[]) => rows.map((each) => each.ref);
+    const { studio, customer, courier, held, nobody } = lists;
+    const refs = {
+      studio: refsOf(studio),
+      customer: refsOf(customer),
+      courier: refsOf(courier),
+      held: refsOf(held),
+      nobody: refsOf(nobody),
+    };
     expect(refs).toEqual({ studio: ['b', 'a'], customer: ['e'], courier: ['d'], held: ['c'], nobody: ['f'] });
   });
 });

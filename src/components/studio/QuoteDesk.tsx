@@ -1,4 +1,4 @@
-import { useEffect, useState } from 'react';
+import { useEffect, useState, type SyntheticEvent } from 'react';
 import { useForm } from 'react-hook-form';
 import { BLANK_LINE, type DeskFields } from '../../commission/desk-fields';
 import type { Problem } from '../../commission/problem';
@@ -194,7 +194,7 @@ function useSubmit(
   standing: Standing,
   set: (standing: Standing) => void,
 ) {
-  return (event: React.FormEvent<HTMLFormElement>) => {
+  return (event: SyntheticEvent<HTMLFormElement>) => {
     const pressed = (event.nativeEvent as SubmitEvent).submitter;
     const act = pressed instanceof HTMLButtonElement ? pressed.value : 'save';
     if (act === 'reprice') return;
