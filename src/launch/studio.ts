@@ -3,6 +3,7 @@ import { readConfig, type Config } from '../server/config';
 import { startCluster } from './cluster';
 import { claimDataFolder } from './data-folder';
 import { startFakes } from './fakes';
+import { prepareRealStudio } from './first-run';
 import { migrateDatabase } from './migrate';
 import { waitForPorts } from './ports';
 import { seedWhenEmpty } from './seed';
@@ -36,6 +37,8 @@ export async function openStudio(): Promise<Studio> {
     if (studio.config.demo) {
       await openFakes(studio, closers);
       await steps.run('Looking for the demo', (progress) => seedWhenEmpty(studio.config, progress));
+    } else {
+      await steps.run('Looking for the owner and the rates', (progress) => prepareRealStudio(studio.config, progress));
     }
     return studio;
   } catch (error) {

@@ -22,6 +22,12 @@ export async function confirmEnquiries(
     .set({ customerId: user.id, confirmedAt: now, updatedAt: now })
     .where(and(eq(commissions.email, user.email), isNull(commissions.confirmedAt)))
     .returning();
+  const named = rows[0];
+  if (named)
+    await tx
+      .update(users)
+      .set({ name: named.customerName })
+      .where(and(eq(users.id, user.id), isNull(users.name)));
   for (const row of rows) {
     await handOverUploads(tx, row.id, user.id);
     await welcomeEnquiry(tx, row, null, now);

@@ -22,6 +22,7 @@ export const configSchema = z.object({
   STRIPE_WEBHOOK_SECRET: optional(z.string().startsWith('whsec_', { error: 'must begin with whsec_' })),
   RESEND_API_KEY: optional(z.string().startsWith('re_', { error: 'must begin with re_' })),
   RESEND_WEBHOOK_SECRET: optional(z.string().startsWith('whsec_', { error: 'must begin with whsec_' })),
+  OWNER_EMAIL: optional(z.email({ error: 'must be one mail address' })),
   MAIL_FROM: optional(z.string().includes('@', { error: 'must hold a mail address' })),
   POURWRIGHT_DATA: optional(z.string()),
   TRUSTED_PROXIES: optional(z.string()),

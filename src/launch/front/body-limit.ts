@@ -19,6 +19,7 @@ const SILENCE = 30_000;
 /** The allowance of a path; uploads and photos are streamed to disk and may be large. */
 export function allowanceFor(path: string): Allowance {
   if (path === '/api/uploads' || path.startsWith('/api/uploads/')) return UPLOAD;
+  if (/^\/api\/commissions\/[^/]+\/files$/.test(path)) return UPLOAD;
   if (path.startsWith('/api/') && /\/photos(\/|$)/.test(path)) return PHOTO;
   return FORM;
 }

@@ -51,6 +51,9 @@ export interface CustomerCommission {
   createdAt: Date;
   leaves: { from: string; to: string } | null;
   declineReason: string | null;
+  /** Country the price was worked out for (ISO 3166-1), and the address for the parcel once given. */
+  destination: string;
+  shipping: CommissionRow['shipping'];
   wish: string;
   request: EstimateRequest;
   estimate: Estimate;
@@ -96,6 +99,7 @@ export async function readCustomerCommission(
 
 function plainFields(row: CommissionRow) {
   const { id, ref, title, deal, pieces, alloy, bladed, createdAt, declineReason, leavesFrom, leavesTo } = row;
+  const { destination, shipping } = row;
   return {
     id,
     ref,
@@ -107,6 +111,8 @@ function plainFields(row: CommissionRow) {
     bladed,
     createdAt,
     declineReason,
+    destination,
+    shipping,
     leaves: leavesFrom && leavesTo ? { from: leavesFrom, to: leavesTo } : null,
     wish: (row.enquiry as Enquiry).wish,
     request: row.estimateRequest as EstimateRequest,
