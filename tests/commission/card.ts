@@ -1,4 +1,5 @@
 import { readdirSync, readFileSync } from 'node:fs';
+import { join } from 'node:path';
 import { estimate } from '../../src/commission/estimate';
 import {
   type EstimateRequest,
@@ -10,12 +11,12 @@ import type { Estimate } from '../../src/commission/pricing-results';
 import { formSchema } from '../../src/commission/form';
 import { demoRates } from '../../src/demo/rates';
 
-const folder = new URL('../../src/content/forms/', import.meta.url);
+const folder = join(import.meta.dirname, '../../src/content/forms');
 
 /** The fourteen forms as their content files stand. */
 export const forms = readdirSync(folder)
   .filter((name) => name.endsWith('.json'))
-  .map((name) => formSchema.parse(JSON.parse(readFileSync(new URL(name, folder), 'utf8'))));
+  .map((name) => formSchema.parse(JSON.parse(readFileSync(join(folder, name), 'utf8'))));
 
 /** The demo studio's rate card, as the page fetches it. */
 export const card = rateCardSchema.parse({ rates: demoRates, forms });

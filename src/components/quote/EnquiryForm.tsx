@@ -35,7 +35,7 @@ export function EnquiryForm({ start }: { start: EnquiryStart }) {
         noValidate={hydrated}
       >
         <FormProblem problem={enquiry.problem} ids={{ uploads: 'enquiry-files-heading' }} />
-        <input type="hidden" defaultValue={start.words.clientId} {...enquiry.register('clientId')} />
+        <input type="hidden" name="clientId" value={start.words.clientId} />
         {Object.entries(start.estimate).map(
           ([name, value]) => value && <input key={name} type="hidden" name={name} value={value} />,
         )}
