@@ -29,7 +29,8 @@ const zodWithoutEval = {
   transform(code, id, options) {
     if (options?.ssr || !id.includes('/zod/v4/core/core.js')) return undefined;
     const told = code.replace('__zod_globalConfig = {}', '__zod_globalConfig = { jitless: true }');
-    if (told === code) throw new Error('zod begins its settings differently now; see zodWithoutEval in astro.config.mjs');
+    if (told === code)
+      throw new Error('zod begins its settings differently now; see zodWithoutEval in astro.config.mjs');
     return told;
   },
 };
