@@ -11,7 +11,9 @@ import { startCheckout, type CheckoutPage } from '../../src/server/checkout';
 import { checkoutSessions, ledgerEntries } from '../../src/server/db/schema/quotes';
 import { events, tray } from '../../src/server/db/schema/commissions';
 import { readBalance } from '../../src/server/ledger';
-import { commission, newEnquiry, openSetting, sentQuote, type Setting } from '../server/deal/deal-setting';
+import { openDesk } from '../../src/server/quote-desk';
+import { sendQuote } from '../../src/server/quotes';
+import { commission, newEnquiry, openSetting, putDraft, type Setting } from '../server/deal/deal-setting';
 
 export const CARD = '4242424242424242';
 export const DECLINED = '4000000000000002';
@@ -56,14 +58,18 @@ export async function openPayingStudio(): Promise<PayingStudio> {
   };
 }
 
-/** A commission of the setting's customer that is agreed: quoted by the desk, accepted by its customer. */
+/** A commission of the setting's customer that is agreed: quoted by the desk's draft with `change`, and accepted. */
 export async function agreed(
   setting: Setting,
-  change?: (draft: QuoteDraft) => QuoteDraft,
+  change: (draft: QuoteDraft) => QuoteDraft = (draft) => draft,
   asked: Record<string, unknown> = {},
 ): Promise<string> {
   const ref = await newEnquiry(setting, asked);
-  await sentQuote(setting, ref, change);
+  const desk = await openDesk(setting.services, setting.owner, ref);
+  if (!desk.ok) throw new Error(desk.problem.message);
+  const versions = await putDraft(setting, ref, change(desk.value.draft));
+  const sent = await sendQuote(setting.services, setting.owner, ref, { ...versions, freeze: true });
+  if (!sent.ok) throw new Error(sent.problem.message);
   const yes = acceptSchema.parse({
     revision: '1',
     typedName: 'Isolde Wintermere',

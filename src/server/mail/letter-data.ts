@@ -204,7 +204,7 @@ export const LETTER_DATA = {
     measured: z
       .array(z.strictObject({ piece: z.int().min(1), massG: z.int().positive(), balanceMm: z.int().min(0).optional() }))
       .min(1)
-      .max(60),
+      .max(200),
     balance: z.strictObject({ amount: moneySchema, dueBy: day }).optional(),
     /** Address it will go to, line by line; empty when the customer has not given one. */
     address: z.array(line).max(8),
