@@ -57,6 +57,17 @@ async function fetchCard(): Promise<RateCard | null> {
   return parsed.success ? parsed.data : null;
 }
 
+/**
+ * What the inputs are to become once the page reckons by itself: what this browser kept, or what follows from another
+ * form that was chosen before the scripts arrived. Null to leave them as they stand.
+ */
+function settledStart(start: PriceStart, typed: EstimateFields, card: RateCard): EstimateFields | null {
+  const form = start.fields.form ?? '';
+  if (typed.form && typed.form !== form) return settleFields(typed, form, card, form);
+  const { estimate: kept } = readDraft();
+  return start.bare && kept ? settleFields(kept, undefined, card, form) : null;
+}
+
 /** The inputs, and the rate card once it is here; what this browser kept comes back when nothing was said. */
 function useInputs(start: PriceStart) {
   const [before] = useState(() => ({ ...start.fields, ...typedBefore(PRICE_FORM, TICKS) }));
@@ -71,11 +82,8 @@ function useInputs(start: PriceStart) {
     let gone = false;
     void fetchCard().then((fetched) => {
       if (gone || !fetched) return;
-      const { estimate: kept } = readDraft();
-      if (start.bare && kept) {
-        const settled = settleFields(kept, undefined, fetched, start.fields.form ?? '');
-        for (const field of ESTIMATE_FIELDS) setValue(field, settled[field] ?? '');
-      }
+      const settled = settledStart(start, textOf(getValues()), fetched);
+      if (settled) for (const field of ESTIMATE_FIELDS) setValue(field, settled[field] ?? '');
       setFields(textOf(getValues()));
       setCard(fetched);
     });
