@@ -66,8 +66,11 @@ function connect(uppy: Uppy, { arrived, failed, refused }: Listeners): () => voi
     uppy.removeFile(file.id);
     arrived(upload);
   };
-  const onError = (file: { name?: string } | undefined, error: { message: string }) =>
-    failed(file?.name ?? 'A file', error.message);
+  const onError = (file: { id: string; name?: string } | undefined, error: { message: string }) => {
+    const message = 'isNetworkError' in error ? refusalOf(0, '') : error.message;
+    if (file) uppy.setFileState(file.id, { error: message });
+    failed(file?.name ?? 'A file', message);
+  };
   const onRefused = (_file: unknown, error: { message: string }) => refused(error.message);
   const onAdded = () => refused(null);
   uppy.on('upload-success', onSuccess);
