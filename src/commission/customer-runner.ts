@@ -65,11 +65,9 @@ function stepOf(gate: { name: string; stages: PieceStage[] }, facts: RunnerFacts
     return { name: gate.name, state: 'ahead', share: 0.9, note: 'Waiting for your look' };
   if (through === concerned.length) {
     const last = [...gate.stages].reverse().find((stage) => facts.reachedOn[stage]);
-    return {
-      name: gate.name,
-      state: 'done',
-      ...noted(facts, last ? facts.reachedOn[last] : undefined, wordsFor(gate.name, facts)),
-    };
+    const reached = last ? facts.reachedOn[last] : undefined;
+    const day = gate.name === 'Pattern' ? (facts.reachedOn.approved ?? reached) : reached;
+    return { name: gate.name, state: 'done', ...noted(facts, day, wordsFor(gate.name, facts)) };
   }
   const count = concerned.length > 1 ? `${through} of ${concerned.length}` : undefined;
   return { name: gate.name, state: 'ahead', share, ...(count && share > 0 ? { note: count } : {}) };
