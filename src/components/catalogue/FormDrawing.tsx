@@ -8,6 +8,8 @@ export interface FormDrawingProps {
   name: string;
   /** `plan` is the face alone, for a list; `full` adds sections, side view and cut ticks. */
   views: 'plan' | 'full';
+  /** Figures beside the bar are this part of the plate's longer side; a plate shown small takes larger ones. */
+  lettering?: number;
   /** Makes the ids of title and description unique on the page. */
   id: string;
 }
@@ -48,7 +50,7 @@ function ScaleBar({ bar, lettering }: { bar: Plate['bar']; lettering: number }) 
  * shows it through this component: list, page, estimate, quote and bench card. Works without scripts.
  */
 export function FormDrawing(props: FormDrawingProps) {
-  const { drawing, name, views, id } = props;
+  const { drawing, name, views, id, lettering = 1 / 54 } = props;
   const plate = useMemo(() => plateOf(drawing, { views, dots: views === 'plan' ? 900 : 2600 }), [drawing, views]);
   return (
     <svg
@@ -64,7 +66,7 @@ export function FormDrawing(props: FormDrawingProps) {
         // Sines differ in their last digit between engines, and then the server's path does as well as the browser's.
         <path key={i} className={`plate-${mark.role}`} d={mark.d} suppressHydrationWarning />
       ))}
-      <ScaleBar bar={plate.bar} lettering={Math.max(plate.widthMm, plate.heightMm) / 54} />
+      <ScaleBar bar={plate.bar} lettering={Math.max(plate.widthMm, plate.heightMm) * lettering} />
     </svg>
   );
 }

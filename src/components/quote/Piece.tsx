@@ -72,7 +72,8 @@ function ScaledDrawing({ form, drawing, fields }: ScaledDrawingProps) {
     () => scaleDrawing(drawing, { length: along, width: across, thickness: through }),
     [drawing, along, across, through],
   );
-  return <FormDrawing drawing={scaled} name={form.name} views="plan" id="price-plate" />;
+  const lettering = drawing.stance === 'lying' ? 1 / 54 : 1 / 28;
+  return <FormDrawing drawing={scaled} name={form.name} views="plan" id="price-plate" lettering={lettering} />;
 }
 
 /** The plate of a form: at hand for the first one, fetched once for the others. */
