@@ -4,6 +4,7 @@ import { type Flask, withFlasks } from './flask';
 import { pouredCups } from './gallery-swords';
 import { joined, rod } from './mesh';
 import { groove } from './over';
+import { HEIGHT, WIDTH } from './raster';
 import type { Scene, Thing } from './scene';
 import { onTheBench, type Shown } from './shots';
 import { lying, type Stock } from './stock';
@@ -26,7 +27,7 @@ function openMould({ mesh, low, high }: Stock, axisUp = 0): Scene {
   });
   const camera = {
     middle: [0, 4] as [number, number],
-    pxPerMm: Math.min(1080 / (halfWide * 5.4), 720 / (halfHigh * 2.5)),
+    pxPerMm: Math.min(WIDTH / (halfWide * 5.4), HEIGHT / (halfHigh * 2.5)),
     tilt: 0.3,
   };
   return { ground: withFlasks(flasks), camera, things, over: () => [] };

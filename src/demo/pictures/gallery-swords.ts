@@ -3,6 +3,7 @@ import { framed } from './framing';
 import { type MaterialName } from './materials';
 import { joined, rod } from './mesh';
 import { glow } from './over';
+import { WIDTH } from './raster';
 import type { Scene } from './scene';
 import { onTheBench, type Shown } from './shots';
 import { lying, type Stock } from './stock';
@@ -52,7 +53,7 @@ export function pouredCups(places: readonly [number, number][], radius: number, 
     turn: 0,
     lift: 0,
   }));
-  const camera = { middle: [0, 0] as [number, number], pxPerMm: 1080 / wide, tilt: 0.55 };
+  const camera = { middle: [0, 0] as [number, number], pxPerMm: WIDTH / wide, tilt: 0.55 };
   const over = () => places.map((place, index) => glow([place[0], place[1] - 1.5], radius, camera, `g${index}`));
   return { ground: 'sand', camera, things: rims, over, daylight: 0.34 };
 }

@@ -1,8 +1,8 @@
 import type { Mesh } from './mesh';
 import type { Vec } from './solid';
 
-export const WIDTH = 1080;
-export const HEIGHT = 720;
+export const WIDTH = 960;
+export const HEIGHT = 640;
 
 /** How the bench is looked at: mm at the middle of the picture, pixels a mm, and how far the camera leans back. */
 export interface Camera {

@@ -9,7 +9,7 @@ export type Triangle = [Vec, Vec, Vec];
 /** Rings of corners, each joined to the next; all have the same number of corners. */
 type Rings = Vec[][];
 
-const CORNERS = 28;
+const CORNERS = 22;
 
 function ringOf(sections: Drawing['sections'], { place, profile }: Slice, inPlan: boolean): Vec[] {
   return sectionPolygon(sections, profile, CORNERS).map(([across, height]: Point): Vec =>
@@ -94,7 +94,7 @@ function bossOf({ at, angle, foot, tip, along, spread }: Knop): Triangle[] {
 }
 
 /** The outer skin of every body and boss, for a picture: no hollows, mirrored parts on both sides. */
-export function skinsOf(drawing: Pick<Drawing, 'bodies' | 'sections' | 'knops'>, slices = 120): Triangle[] {
+export function skinsOf(drawing: Pick<Drawing, 'bodies' | 'sections' | 'knops'>, slices = 84): Triangle[] {
   const bodies = drawing.bodies.flatMap((body) => {
     const rings = ringsOf(body, drawing.sections, slices);
     const mirrored = rings.map((ring) => ring.map(([x, y, z]): Vec => [x, -y, z]));
