@@ -141,6 +141,15 @@ describe('a page made at the request', () => {
     expect((await ask('/studio', { headers: { 'accept-encoding': 'gzip' } })).headers['content-encoding']).toBe('gzip');
   });
 
+  it('that goes on telling news is not compressed, so that each piece leaves at once', async () => {
+    const headers = { 'accept-encoding': 'br, gzip' };
+    const listening = request({ port, host: '127.0.0.1', path: '/api/events', headers }).end();
+    const [events] = (await once(listening, 'response')) as [IncomingMessage];
+    expect(events.headers['content-encoding']).toBeUndefined();
+    expect(String((await once(events, 'data'))[0])).toBe('data: poured\n\n');
+    listening.destroy();
+  });
+
   it('knows the sender by the socket, whatever the sender claims', async () => {
     const headers = { 'x-forwarded-for': '6.6.6.6', 'x-forwarded-host': 'evil.example', forwarded: 'for=6.6.6.6' };
     const answer = await ask('/api/who', { headers });

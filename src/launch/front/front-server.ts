@@ -34,7 +34,7 @@ export function createFrontServer(config: Config, log: Logger, staticFolder: str
   const hosts = knownHosts(config);
   const common = commonHeaders(config);
   const framing = framingPolicy(config);
-  const compress = compression();
+  const compress = compression({ filter: (req, res) => !isStream(res) && compression.filter(req, res) });
   const streams = new Set<ServerResponse>();
   const withPolicy = (type: string, own?: string): OutgoingHttpHeaders => ({
     ...common,
@@ -51,7 +51,7 @@ export function createFrontServer(config: Config, log: Logger, staticFolder: str
       res,
       (_status, headers) => {
         const type = String(headers['content-type'] ?? '');
-        if (type.startsWith('text/event-stream')) keepUntilClosed(streams, res);
+        if (type.startsWith(EVENT_STREAM)) keepUntilClosed(streams, res);
         if (type === 'text/html') headers['content-type'] = 'text/html; charset=utf-8';
         return { ...headers, ...withPolicy(type, headers['content-security-policy'] as string | undefined) };
       },
@@ -81,6 +81,13 @@ export function createFrontServer(config: Config, log: Logger, staticFolder: str
   });
   limitTimes(server);
   return { server, drain: (patience) => drain(server, streams, patience) };
+}
+
+const EVENT_STREAM = 'text/event-stream';
+
+/** News must leave at once; a compressor would hold it back until its block is full. */
+function isStream(res: { getHeader(name: string): unknown }): boolean {
+  return String(res.getHeader('content-type') ?? '').startsWith(EVENT_STREAM);
 }
 
 const nothingHere: Refusal = { status: 404, message: 'There is nothing at this address.' };
