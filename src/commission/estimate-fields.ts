@@ -9,8 +9,9 @@ export const ESTIMATE_FIELDS = Object.keys(estimateRequestSchema.shape) as Estim
 export type EstimateFields = Partial<Record<EstimateField, string>>;
 
 export const TICKS = ['cored', 'bladed', 'rush'] as const satisfies readonly EstimateField[];
-const FORM_ONLY = ['form', 'lengthMm', 'widthMm', 'thicknessMm'] as const satisfies readonly EstimateField[];
-const OWN_ONLY = [
+/** Inputs that only a form of the studio has, and those that only a piece of one's own has. */
+export const FORM_ONLY = ['form', 'lengthMm', 'widthMm', 'thicknessMm'] as const satisfies readonly EstimateField[];
+export const OWN_ONLY = [
   'description',
   'massG',
   'volumeMm3',

@@ -16,7 +16,7 @@ export interface Choice {
 /** What the price page offers for what stands in its inputs. */
 export interface PriceChoices {
   /** The chosen form; null for a piece of the buyer's own, and while the form is unknown. */
-  form: Pick<PricedForm, 'slug' | 'name' | 'period' | 'dimensionsMm' | 'bladed' | 'massesG'> | null;
+  form: Pick<PricedForm, 'slug' | 'name' | 'period' | 'dimensionsMm' | 'bladed'> | null;
   alloys: (Choice & { densityGPerCm3: number })[];
   finishes: Choice[];
   /** Empty when the piece has no edge. */
@@ -46,7 +46,6 @@ function choicesFor(fields: EstimateFields, { rates, forms }: RateCard): PriceCh
       period: form.period,
       dimensionsMm: form.dimensionsMm,
       bladed: form.bladed,
-      massesG: form.massesG,
     },
     alloys: rates.alloys
       .filter(({ code }) => (form ? form.alloys.includes(code) : own))

@@ -1,3 +1,4 @@
+import { FORM_ONLY, OWN_ONLY, type EstimateField } from '../../commission/estimate-fields';
 import { usePriceState } from './price-context';
 
 const MODES = [
@@ -33,14 +34,11 @@ export function Modes() {
   );
 }
 
-const OWN = ['description', 'massG', 'volumeMm3', 'longestMm', 'thinnestMm', 'cored', 'bladed', 'texture'] as const;
-const FORM = ['form', 'lengthMm', 'widthMm', 'thicknessMm'] as const;
-
 /** What the other side was told, and the form the sizes belong to: a plain form sends them along unseen. */
 function CarriedAlong() {
   const { fields, live } = usePriceState();
   if (live) return null;
-  const other = fields.what === 'own' ? FORM : OWN;
+  const other: readonly EstimateField[] = fields.what === 'own' ? FORM_ONLY : OWN_ONLY;
   return (
     <>
       <input type="hidden" name="sized" value={fields.form ?? ''} />

@@ -1,4 +1,4 @@
-import { useMemo, type FormEvent } from 'react';
+import type { FormEvent } from 'react';
 import type { Choice } from '../../commission/price-view';
 import { AlloyRows } from './AlloyRows';
 import { Dimensions } from './Dimensions';
@@ -40,9 +40,8 @@ export function PricePage({ start, forms, countries, plate }: PricePageProps) {
     price.press();
     if (!view.outcome.ok) focusFirst(event.currentTarget, view.outcome.problem.fields);
   };
-  const context = useMemo(() => price, [price]);
   return (
-    <PriceContext value={context}>
+    <PriceContext value={price}>
       <form method="get" action="/price" id={PRICE_FORM} onSubmit={onSubmit} noValidate>
         <button className="sr-only" type="submit" name="go" value="reckon" tabIndex={-1} aria-hidden="true">
           Reckon the price
