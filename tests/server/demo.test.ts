@@ -7,7 +7,6 @@ import { estimateRequestSchema } from '../../src/commission/estimate-request';
 import { afterPour } from '../../src/commission/soundness';
 import { daysBetween } from '../../src/commission/turn-facts';
 import { seedDemo } from '../../src/demo/seed';
-import { STORIES } from '../../src/demo/stories/all';
 import { commissions, events, questions, uploads } from '../../src/server/db/schema/commissions';
 import { attempts, gates, photos, pieces } from '../../src/server/db/schema/making';
 import { users } from '../../src/server/db/schema/people';
@@ -289,20 +288,5 @@ describe('the seed', () => {
     const before = await services.db.select({ n: count() }).from(events);
     await expect(seedDemo(services)).rejects.toThrow('empty database');
     expect(await services.db.select({ n: count() }).from(events)).toEqual(before);
-  });
-
-  it('tells every story in order and in the past, on whatever day and hour it is planted', () => {
-    const hours = [0, 7, 13, 23.9];
-    const days = Array.from({ length: 14 }, (_, day) => day);
-    const wrong = days.flatMap((day) =>
-      hours.flatMap((hour) => {
-        const now = new Date(NOW.getTime() + (day * 24 + hour) * 60 * 60_000);
-        return STORIES.filter((story) => {
-          const times = story.map((step) => step.at(now).getTime());
-          return times.some((time, i) => time > now.getTime() || (i > 0 && time < times[i - 1]!));
-        }).map(() => now.toISOString());
-      }),
-    );
-    expect(wrong).toEqual([]);
   });
 });
