@@ -1,15 +1,27 @@
 /**
  * Keeps a page's live parts fresh. The element `[data-live-source]` names the event stream; on news the
  * page reads itself again and swaps every `[data-live]` part for its new self. Parts somebody is
- * typing in are left alone until the next news. Without scripts the page is simply the page.
+ * typing in, or has typed something into, are left alone. Without scripts the page is simply the page.
  */
 const source = document.querySelector<HTMLElement>('[data-live-source]')?.dataset['liveSource'];
 let reading = false;
 let again = false;
 
+const FIELDS = 'input, textarea, select';
+
 function isBusy(part: Element): boolean {
   const focused = document.activeElement;
-  return part.contains(focused) && focused !== null && /^(INPUT|TEXTAREA|SELECT)$/.test(focused.tagName);
+  if (part.contains(focused) && focused?.matches(FIELDS)) return true;
+  return [...part.querySelectorAll(FIELDS)].some(isChanged);
+}
+
+/** True when a field holds something that the page did not put there. */
+function isChanged(field: Element): boolean {
+  if (field instanceof HTMLSelectElement)
+    return [...field.options].some((option) => option.selected && !option.defaultSelected && option.index > 0);
+  if (field instanceof HTMLTextAreaElement) return field.value !== field.defaultValue;
+  if (!(field instanceof HTMLInputElement) || field.type === 'hidden') return false;
+  return field.value !== field.defaultValue || field.checked !== field.defaultChecked;
 }
 
 async function refresh(): Promise<void> {
