@@ -124,7 +124,7 @@ function agreed(facts: TurnFacts): WhoseTurn {
 function paymentTurn(facts: TurnFacts): WhoseTurn | null {
   const { payment, now } = facts;
   if (!payment || payment.state === 'paid' || payment.state === 'later') return null;
-  const label = payment.label.toLowerCase();
+  const label = withinSentence(payment.label);
   const since = payment.state === 'overdue' && payment.dueAt ? payment.dueAt : facts.since;
   if (payment.state === 'on-its-way')
     return {
@@ -156,4 +156,9 @@ function dueWords(payment: NonNullable<TurnFacts['payment']>, { deal, now }: Tur
   const left = dayCount(daysBetween(now, payment.dueAt));
   const verb = deal === 'agreed' ? 'lapses' : 'due';
   return left === 'today' ? `${payment.label}, ${verb} today` : `${payment.label}, ${verb} in ${left}`;
+}
+
+/** A label as it stands inside a sentence: only its first letter gives way, so that "gate A" stays "gate A". */
+function withinSentence(label: string): string {
+  return label.charAt(0).toLowerCase() + label.slice(1);
 }
