@@ -63,7 +63,7 @@ export function stagePayments(
     grossMinor: netMinor + taxMinor,
   });
   const stages = [stage('deposit', 'Deposit', depositMinor)];
-  if (gateMinor > 0) stages.push(stage('gate-a', 'When you approve gate A', gateMinor));
+  if (gateMinor > 0) stages.push(stage('gate-a', 'Stage payment at gate A', gateMinor));
   const paid = stages.reduce((sum, item) => sum + item.netMinor, 0);
   const taxed = stages.reduce((sum, item) => sum + item.taxMinor, 0);
   return [...stages, stage('balance', 'Balance before dispatch', totals.netMinor - paid, totals.taxMinor - taxed)];

@@ -56,7 +56,7 @@ describe('whose turn it is', () => {
     ['making', {}, 'studio', /starting/],
     ['making', { pieces, gate: { gate: 'A', state: 'open', at: days(-4) } }, 'customer', /wax or pattern/],
     ['making', { pieces, gate: { gate: 'A', state: 'changes', at: days(-4) } }, 'studio', /asked for changes/],
-    ['making', { pieces, payment: { ...deposit, label: 'When you approve gate A' } }, 'customer', /is due/],
+    ['making', { pieces, payment: { ...deposit, label: 'Stage payment at gate A' } }, 'customer', /is due/],
     ['held', {}, 'nobody', /is held/],
     ['held', { heldUntil: '2027-05-01' }, 'nobody', /until 1 May 2027/],
     ['finished', { payment: { ...deposit, label: 'Balance' } }, 'customer', /balance of £660\.00 is due/],
