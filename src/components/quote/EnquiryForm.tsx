@@ -1,4 +1,4 @@
-import { useCallback, useState, type FormEvent } from 'react';
+import { useCallback, useState, type SubmitEvent } from 'react';
 import { Button } from '../ui/Button';
 import { FormProblem } from '../ui/FormProblem';
 import { AboutYou } from './AboutYou';
@@ -20,7 +20,7 @@ export function EnquiryForm({ start }: { start: EnquiryStart }) {
   const [uploads, setUploads] = useState<readonly string[]>(start.uploads);
   const onFiles = useCallback((files: readonly Upload[]) => setUploads(files.map(({ id }) => id)), []);
   const enquiry = useEnquiry(start, uploads);
-  const onSubmit = (event: FormEvent) => {
+  const onSubmit = (event: SubmitEvent) => {
     event.preventDefault();
     if (!enquiry.sending) enquiry.send();
   };

@@ -1,4 +1,4 @@
-import type { FormEvent } from 'react';
+import type { SubmitEvent } from 'react';
 import type { Choice } from '../../commission/price-view';
 import { AlloyRows } from './AlloyRows';
 import { Dimensions } from './Dimensions';
@@ -31,10 +31,10 @@ export function PricePage({ start, forms, countries, plate }: PricePageProps) {
   const price = usePrice(start);
   const { fields, view, live, query } = price;
   const own = fields.what === 'own';
-  const onSubmit = (event: FormEvent<HTMLFormElement>) => {
+  const onSubmit = (event: SubmitEvent<HTMLFormElement>) => {
     if (!live) return;
     event.preventDefault();
-    const submitter = (event.nativeEvent as SubmitEvent).submitter;
+    const submitter = event.nativeEvent.submitter;
     const enquires = submitter instanceof HTMLButtonElement && submitter.value === 'enquire';
     if (enquires && view.outcome.ok) return window.location.assign(`/price/enquire?${query}`);
     price.press();
