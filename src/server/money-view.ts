@@ -13,6 +13,13 @@ const HELD: readonly DealState[] = ['agreed', 'booked', 'making', 'held', 'finis
 /** Booked work with money still to come. */
 const TO_COME: readonly DealState[] = ['booked', 'making', 'held', 'finished'];
 
+/** Of these nothing more is to come, whatever was agreed. */
+const ENDED: readonly DealState[] = ['lapsed', 'declined', 'cancelled'];
+
+function nothingToCome(balance: Balance): Balance {
+  return { ...balance, toComeMinor: 0, dueMinor: 0, overdueMinor: 0 };
+}
+
 /** One commission's line on the money page. Amounts in minor units of its currency. */
 export interface MoneyLine {
   ref: string;
@@ -76,7 +83,7 @@ export async function readMoney(services: Services, actor: Actor): Promise<Outco
     title: row.title,
     customer: row.customerName,
     deal: row.deal,
-    balance: balances.get(row.id)!,
+    balance: ENDED.includes(row.deal) ? nothingToCome(balances.get(row.id)!) : balances.get(row.id)!,
   }));
   return done({ lines, totals: totalsOf(lines), moved: await lastMoved(services) });
 }

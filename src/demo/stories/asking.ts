@@ -38,6 +38,14 @@ export const beastHeads: Step[] = [
     message(world, HANDLES, 'corin', 'We are agreed at last, all four of us. Please send the firm quote.'),
   ),
   step(exactly(35, 30), (world) => quote(world, HANDLES)),
+  step(exactly(35, 20), (world) =>
+    message(
+      world,
+      HANDLES,
+      'wren',
+      'Here it is. The price stands for thirty days; the metal’s price decides how long we can hold it.',
+    ),
+  ),
   step(exactly(5, 20), async (world) => {
     const lapsed = await lapseQuotes(world.services);
     if (lapsed !== 1) throw new Error(`The demo wanted one quote to lapse; ${lapsed} did.`);
@@ -102,6 +110,14 @@ export const museumHilt: Step[] = [
     ),
   ),
   step(exactly(24, -150), (world) => quote(world, HILT, withMarksUnderFoot)),
+  step(exactly(24, -165), (world) =>
+    message(
+      world,
+      HILT,
+      'wren',
+      'Revision 2 has both under the foot, cut into the wax. Revision 1 is withdrawn. Accept with your order’s number when you have it.',
+    ),
+  ),
 ];
 
 /** MF-0186: a gouge from a found file without a unit; three questions are open. */

@@ -67,6 +67,9 @@ export const socketedAxe: Step[] = [
       'It is on the desk in front of me. Lighter than I thought and so much finer. Thank you for every picture.',
     ),
   ),
+  step(ago(39, '21:15'), (world) =>
+    message(world, AXE, 'wren', 'That makes our evening. Wipe it with a dry cloth now and then, and it will stay so.'),
+  ),
   step(ago(38, '09:20'), (world) =>
     note(world, AXE, 'care-reminder', { who: 'hester', sentence: 'Asked for one care reminder after six months.' }),
   ),
@@ -146,7 +149,16 @@ export const rivetedDagger: Step[] = [
       'Send it to us as it is. The rivet is on us; polishing the face anew is £85.00 and carriage back £26.00, both before VAT. Nothing starts before you say yes.',
     ),
   ),
+  step(ago(30, '18:50'), (world) => message(world, DAGGER, 'ansel', 'Yes, please do. It goes off tomorrow.')),
   step(ago(24, '11:05'), openRework),
+  step(ago(24, '11:30'), (world) =>
+    message(
+      world,
+      DAGGER,
+      'wren',
+      'It is here and photographed. The refinishing can be paid on this page; we start once it is.',
+    ),
+  ),
   step(ago(18, '08:40'), (world) => pay(world, DAGGER, 'rework')),
   step(ago(17, '14:10'), (world) => work(world, DAGGER, 'davit', 'Filing and finishing', 45, 1)),
 ];

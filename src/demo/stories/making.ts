@@ -228,6 +228,14 @@ export const linstocks: Step[] = [
     ),
   ),
   step(ago(12, '09:10'), holdLinstocks),
+  step(ago(12, '09:25'), (world) =>
+    message(
+      world,
+      LINSTOCKS,
+      'wren',
+      'Held, and nothing is spent until you say go. The pictures of them stay between us.',
+    ),
+  ),
 ];
 
 async function holdLinstocks(world: World): Promise<void> {

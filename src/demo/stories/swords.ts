@@ -5,7 +5,7 @@ import { and, eq, ne } from 'drizzle-orm';
 import { stagePayments } from '../../server/db/schema/quotes';
 import { lockCommission } from '../../server/commissions';
 import { acceptedStages, bookEntry } from '../../server/ledger';
-import { photo, reach, scrap, type Shot } from '../acts/bench';
+import { photo, reach, scrap, type Shot, work } from '../acts/bench';
 import { accept, address, enquire, estimateSent, message, quote } from '../acts/deal';
 import { pay } from '../acts/money';
 import { move, note } from '../acts/records';
@@ -127,6 +127,14 @@ export const cancelledSword: Step[] = [
     ),
   ),
   step(ago(22, '10:15'), cancelSword),
+  step(ago(22, '10:40'), (world) =>
+    message(
+      world,
+      CANCELLED,
+      'wren',
+      'I am sorry to hear it. The hours and materials up to the wax come to £499.40 before VAT, each line is in the history, and the rest is on its way back to you. The wax and the mould are yours if you come back to it within the year.',
+    ),
+  ),
 ];
 
 /** The customer's cancellation: kept is what the hours and materials before the gate came to, the rest goes back. */
@@ -276,6 +284,7 @@ async function scrapFirstPour(world: World): Promise<void> {
     caption: 'The end of the casting, close',
     alt: 'Close view of the rounded, uneven end of the bronze blade. A bar of 50 mm lies beside it.',
   });
+  await work(world, SWORD, 'juno', 'Breaking out', 60, 1);
   await scrap(world, SWORD, 'juno', {
     piece: 1,
     from: 'poured',
