@@ -59,6 +59,7 @@ class Parts {
   readonly fields: Record<string, string> = {};
   arrival: Arrival | null = null;
   #diskFault: { error: unknown } | null = null;
+  #endEarly: (error: unknown) => void = () => undefined;
   readonly #parser: BusboyInstance;
   readonly #folder: string;
 
@@ -82,29 +83,27 @@ class Parts {
         source.once('close', () => source.readableEnded || reject(new Error('the sender hung up')));
         this.#parser.once('error', reject);
         this.#parser.once('finish', resolve);
-        this.#onDiskFault = reject;
+        this.#endEarly = reject;
         source.pipe(this.#parser);
       });
       return true;
-    } catch (error) {
+    } catch {
       source.destroy();
       await this.#drop();
       if (this.#diskFault) throw this.#diskFault.error;
-      if (!(error instanceof Error)) throw error;
       return false;
     }
   }
-
-  #onDiskFault: (error: unknown) => void = () => undefined;
 
   #take(name: string, stream: BusboyFileStream, fileName: string | undefined): void {
     if (name !== 'file' || this.arrival) return void stream.resume();
     const received = receive(this.#folder, stream).then((file) => ({ ...file, name: fileName ?? '' }));
     this.arrival = { stream, received };
-    received.catch((error: unknown) => {
-      if (stream.errored === error) return;
-      this.#diskFault = { error };
-      this.#onDiskFault(error);
+    // A stream that is cut off says so once more after nobody listens; `received` has told it by then.
+    stream.on('error', () => undefined);
+    received.catch((error: NodeJS.ErrnoException) => {
+      if (error.syscall !== undefined) this.#diskFault = { error };
+      this.#endEarly(error);
     });
   }
 
