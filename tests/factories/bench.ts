@@ -1,15 +1,15 @@
 import { eq } from 'drizzle-orm';
-import { nextStage, type PieceStage } from '../../src/commission/making';
-import type { QuoteDraft } from '../../src/commission/quote-draft';
-import { gateDecisionSchema, decideGate, latestGate } from '../../src/server/gates';
-import { dispatchCommission, finishCommission } from '../../src/server/finishing';
-import { reachStage } from '../../src/server/making';
-import { photoFieldsSchema, storePhoto } from '../../src/server/photos';
-import { readAttempts, readPieces } from '../../src/server/pieces';
-import { scrapCasting } from '../../src/server/scrap';
+import { nextStage, type PieceStage } from '../../src/commission/making/making';
+import type { QuoteDraft } from '../../src/commission/pricing/quote-draft';
+import { gateDecisionSchema, decideGate, latestGate } from '../../src/server/making/gates';
+import { dispatchCommission, finishCommission } from '../../src/server/making/finishing';
+import { reachStage } from '../../src/server/making/making';
+import { photoFieldsSchema, storePhoto } from '../../src/server/making/photos';
+import { readAttempts, readPieces } from '../../src/server/making/pieces';
+import { scrapCasting } from '../../src/server/making/scrap';
 import { mails } from '../../src/server/db/schema/studio';
 import type { Outcome } from '../../src/commission/problem';
-import { scrapSchema, stageDoneSchema, dispatchSchema } from '../../src/commission/work-done';
+import { scrapSchema, stageDoneSchema, dispatchSchema } from '../../src/commission/making/work-done';
 import { commission, type Person } from '../server/deal/deal-setting';
 import { agreed, payDue, type PayingStudio } from './paying-studio';
 

@@ -1,7 +1,7 @@
 import { readFileSync } from 'node:fs';
 import type { Actor } from '../../../src/commission/permissions';
 import { readConfig } from '../../../src/server/config';
-import { addPhoto } from '../../../src/server/receive-photo';
+import { addPhoto } from '../../../src/server/making/receive-photo';
 import { createServices, type Services } from '../../../src/server/services';
 import { formRequest } from '../../factories/files';
 
