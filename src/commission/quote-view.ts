@@ -1,4 +1,4 @@
-import type { DocumentLine, StagePayment } from './pricing-results';
+import type { DocumentLine, StagePayment } from './pricing/pricing-results';
 import type { Currency } from './money';
 
 /** When a stage payment falls due, in the customer's words. */

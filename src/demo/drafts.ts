@@ -1,8 +1,8 @@
-import { costLine, type CostLine } from '../commission/cost-lines';
-import { metalLines } from '../commission/metal-lines';
-import type { QuoteDraft } from '../commission/quote-draft';
-import { findAlloy, findFamily, heatMinor } from '../commission/rates';
-import { soundnessOf } from '../commission/soundness';
+import { costLine, type CostLine } from '../commission/pricing/cost-lines';
+import { metalLines } from '../commission/pricing/metal-lines';
+import type { QuoteDraft } from '../commission/pricing/quote-draft';
+import { findAlloy, findFamily, heatMinor } from '../commission/pricing/rates';
+import { soundnessOf } from '../commission/pricing/soundness';
 import { demoRates } from './rates';
 
 const bench = demoRates.benchRateMinorPerHour;

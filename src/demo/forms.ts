@@ -1,7 +1,7 @@
 import { readFileSync } from 'node:fs';
 import { join } from 'node:path';
 import type { Drawing } from '../casting/drawing';
-import { formSchema } from '../commission/form';
+import { formSchema } from '../commission/pricing/form';
 
 /** The drawing of one form of the catalogue, from its file under `<content>/forms`. */
 export function drawingOf(contentFolder: string, slug: string): Drawing {

@@ -1,7 +1,7 @@
-import { carriageFor } from '../commission/carriage';
-import { costLine, type CostLine } from '../commission/cost-lines';
-import { priceQuote } from '../commission/quote';
-import type { QuoteDraft } from '../commission/quote-draft';
+import { carriageFor } from '../commission/pricing/carriage';
+import { costLine, type CostLine } from '../commission/pricing/cost-lines';
+import { priceQuote } from '../commission/pricing/quote';
+import type { QuoteDraft } from '../commission/pricing/quote-draft';
 import { demoRates } from './rates';
 
 const bench = demoRates.benchRateMinorPerHour;

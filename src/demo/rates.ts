@@ -1,4 +1,4 @@
-import type { Family, OwnPieceRates, PricingConstants, StudioRates } from '../commission/rates';
+import type { Family, OwnPieceRates, PricingConstants, StudioRates } from '../commission/pricing/rates';
 
 /** All prices, hours and histories here are invented for the demo studio. Densities and contractions are handbook values. */
 

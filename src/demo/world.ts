@@ -5,7 +5,7 @@ import type { CommissionRow } from '../server/commissions';
 import type { Database, Transaction } from '../server/db/client';
 import { commissions } from '../server/db/schema/commissions';
 import { users } from '../server/db/schema/people';
-import type { NewPhoto } from '../server/photos';
+import type { NewPhoto } from '../server/making/photos';
 import type { Services } from '../server/services';
 import type { Moment } from './clock';
 import { demoPeople } from './people';

@@ -40,14 +40,12 @@ export async function firstRun(services: Services, ownerEmail: string | undefine
       await tx
         .insert(rateVersions)
         .values({ id: uuidv7(), rates: { ...demoRates, version: 'starting-values' }, createdAt });
-      await tx
-        .insert(tray)
-        .values({
-          id: uuidv7(),
-          problem: { code: 'stale', message: STARTING_RATES },
-          data: { page: '/studio/rates' },
-          createdAt,
-        });
+      await tx.insert(tray).values({
+        id: uuidv7(),
+        problem: { code: 'stale', message: STARTING_RATES },
+        data: { page: '/studio/rates' },
+        createdAt,
+      });
     });
     done.push('starting rates are in force');
   }

@@ -6,7 +6,7 @@ import { plateOf } from '../../src/casting/plate/plate';
 import { profileAlong } from '../../src/casting/plate/profile';
 import { polygonArea, sectionPolygon, type Point } from '../../src/casting/plate/section';
 import { approximateVolumeMm3 } from '../../src/casting/plate/volume';
-import { formSchema } from '../../src/commission/form';
+import { formSchema } from '../../src/commission/pricing/form';
 
 const folder = new URL('../../src/content/forms/', import.meta.url);
 const forms = readdirSync(folder).map((name) =>

@@ -2,7 +2,7 @@ import { readdirSync, readFileSync } from 'node:fs';
 import { describe, expect, it } from 'vitest';
 import { lengthWords, massWords } from '../../src/casting/reader-units';
 import { studioAlloy } from '../../src/casting/studio-alloys';
-import { formSchema } from '../../src/commission/form';
+import { formSchema } from '../../src/commission/pricing/form';
 import { byPeriod, periodOf } from '../../src/components/catalogue/periods';
 
 const folder = new URL('../../src/content/forms/', import.meta.url);

@@ -3,7 +3,7 @@ import { describe, expect, it } from 'vitest';
 import { plateOf } from '../../src/casting/plate/plate';
 import { approximateVolumeMm3 } from '../../src/casting/plate/volume';
 import { scaleDrawing } from '../../src/casting/scale-drawing';
-import { formSchema } from '../../src/commission/form';
+import { formSchema } from '../../src/commission/pricing/form';
 
 const folder = new URL('../../src/content/forms/', import.meta.url);
 const forms = readdirSync(folder).map((name) =>

@@ -1,5 +1,5 @@
 import fc from 'fast-check';
-import type { EstimateFields } from '../../src/commission/estimate-fields';
+import type { EstimateFields } from '../../src/commission/pricing/estimate-fields';
 import { card, forms } from './card';
 
 const { rates } = card;

@@ -1,14 +1,14 @@
 import { readdirSync, readFileSync } from 'node:fs';
 import { join } from 'node:path';
-import { estimate } from '../../src/commission/estimate';
+import { estimate } from '../../src/commission/pricing/estimate';
 import {
   type EstimateRequest,
   type EstimateRequestInput,
   estimateRequestSchema,
   rateCardSchema,
-} from '../../src/commission/estimate-request';
-import type { Estimate } from '../../src/commission/pricing-results';
-import { formSchema } from '../../src/commission/form';
+} from '../../src/commission/pricing/estimate-request';
+import type { Estimate } from '../../src/commission/pricing/pricing-results';
+import { formSchema } from '../../src/commission/pricing/form';
 import { demoRates } from '../../src/demo/rates';
 
 const folder = join(import.meta.dirname, '../../src/content/forms');

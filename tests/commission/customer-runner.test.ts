@@ -1,9 +1,9 @@
 // Job.md section 2: the stage shown to the customer is that of the least advanced piece, with how many are beyond it.
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
-import { runnerOf, type RunnerFacts } from '../../src/commission/customer-runner';
+import { runnerOf, type RunnerFacts } from '../../src/commission/making/customer-runner';
 import { DEAL_STATES } from '../../src/commission/deal';
-import { routeFor, type PieceStage } from '../../src/commission/making';
+import { routeFor, type PieceStage } from '../../src/commission/making/making';
 
 const route = routeFor({ pattern: true, harden: true, patinate: false, haft: false });
 const facts = (stages: readonly PieceStage[], more: Partial<RunnerFacts> = {}): RunnerFacts => ({

@@ -7,8 +7,8 @@ import {
   settleFields,
   spokenQuery,
   type EstimateFields,
-} from '../../src/commission/estimate-fields';
-import { reckon } from '../../src/commission/price-view';
+} from '../../src/commission/pricing/estimate-fields';
+import { reckon } from '../../src/commission/pricing/price-view';
 import { card, forms } from './card';
 import { anyFields } from './any-fields';
 

@@ -1,10 +1,10 @@
 import fc from 'fast-check';
 import { describe, expect, test } from 'vitest';
-import { draftFromEstimate, estimate } from '../../src/commission/estimate';
-import { type EstimateRequestInput, estimateRequestSchema } from '../../src/commission/estimate-request';
-import { chanceWords } from '../../src/commission/estimate-words';
-import { priceQuote } from '../../src/commission/quote';
-import { quoteDraftSchema } from '../../src/commission/quote-draft';
+import { draftFromEstimate, estimate } from '../../src/commission/pricing/estimate';
+import { type EstimateRequestInput, estimateRequestSchema } from '../../src/commission/pricing/estimate-request';
+import { chanceWords } from '../../src/commission/pricing/estimate-words';
+import { priceQuote } from '../../src/commission/pricing/quote';
+import { quoteDraftSchema } from '../../src/commission/pricing/quote-draft';
 import { swordFromFile } from '../../src/demo/drafts';
 import { card, estimated, forms, request } from './card';
 

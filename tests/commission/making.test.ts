@@ -1,7 +1,7 @@
 // Job.md section 2 (2): the order of a piece's stages; unused stages are struck out in the quote.
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
-import { costLine } from '../../src/commission/cost-lines';
+import { costLine } from '../../src/commission/pricing/cost-lines';
 import {
   hasReached,
   leastAdvanced,
@@ -12,8 +12,8 @@ import {
   STAGE_ACTS,
   STAGE_OPERATIONS,
   stageAfterScrap,
-} from '../../src/commission/making';
-import { routeOfPiece, routeOptionsOf } from '../../src/commission/route-of-quote';
+} from '../../src/commission/making/making';
+import { routeOfPiece, routeOptionsOf } from '../../src/commission/making/route-of-quote';
 import { palstaves, swordFromFile } from '../../src/demo/drafts';
 
 const ORDER = [

@@ -9,11 +9,11 @@ import {
   allocate,
   share,
 } from '../../src/commission/money';
-import { costQuantile, listOutcomes } from '../../src/commission/cost-distribution';
-import { cancellationStatement } from '../../src/commission/cancellation';
-import { markupOf, priceWithMargin } from '../../src/commission/price';
-import { priceQuote } from '../../src/commission/quote';
-import type { QuoteDraft } from '../../src/commission/quote-draft';
+import { costQuantile, listOutcomes } from '../../src/commission/pricing/cost-distribution';
+import { cancellationStatement } from '../../src/commission/pricing/cancellation';
+import { markupOf, priceWithMargin } from '../../src/commission/pricing/price';
+import { priceQuote } from '../../src/commission/pricing/quote';
+import type { QuoteDraft } from '../../src/commission/pricing/quote-draft';
 import { palstaves, swordFromFile } from '../../src/demo/drafts';
 
 const sum = (values: readonly number[]) => values.reduce((a, b) => a + b, 0);

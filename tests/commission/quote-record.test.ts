@@ -1,8 +1,8 @@
 import fc from 'fast-check';
 import { describe, expect, test } from 'vitest';
 import { canonicalJson } from '../../src/commission/canonical-json';
-import { diffQuotes } from '../../src/commission/quote-diff';
-import { quoteDraftSchema } from '../../src/commission/quote-draft';
+import { diffQuotes } from '../../src/commission/pricing/quote-diff';
+import { quoteDraftSchema } from '../../src/commission/pricing/quote-draft';
 import { palstaves, swordFromFile } from '../../src/demo/drafts';
 
 const sword = swordFromFile();

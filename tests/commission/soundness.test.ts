@@ -1,8 +1,8 @@
 import fc from 'fast-check';
 import { jStat } from 'jstat';
 import { describe, expect, test } from 'vitest';
-import { betaChance, betaQuantile, lnGamma } from '../../src/commission/beta-quantile';
-import { calibrateHours, nearestRank } from '../../src/commission/calibration';
+import { betaChance, betaQuantile, lnGamma } from '../../src/commission/pricing/beta-quantile';
+import { calibrateHours, nearestRank } from '../../src/commission/pricing/calibration';
 import {
   afterPour,
   coveredFailures,
@@ -12,7 +12,7 @@ import {
   meanSoundness,
   soundnessInterval,
   soundnessOf,
-} from '../../src/commission/soundness';
+} from '../../src/commission/pricing/soundness';
 
 const belief = fc.record({
   alpha: fc.double({ min: 1.5, max: 300, noNaN: true }),

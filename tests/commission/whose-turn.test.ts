@@ -1,8 +1,8 @@
 import { describe, expect, it } from 'vitest';
 import { DEAL_STATES, type DealState } from '../../src/commission/deal';
-import type { TurnFacts } from '../../src/commission/turn-facts';
-import { listByTurn } from '../../src/commission/turn-list';
-import { whoseTurn } from '../../src/commission/whose-turn';
+import type { TurnFacts } from '../../src/commission/turn/turn-facts';
+import { listByTurn } from '../../src/commission/turn/turn-list';
+import { whoseTurn } from '../../src/commission/turn/whose-turn';
 
 const NOW = new Date('2027-03-10T12:00:00Z');
 const days = (count: number) => new Date(NOW.getTime() + count * 86_400_000);

@@ -7,7 +7,7 @@ import {
   scrapSchema,
   stageDoneSchema,
   timerSchema,
-} from '../../src/commission/work-done';
+} from '../../src/commission/making/work-done';
 
 const entry = { clientId: 'entry-000001', piece: '1' };
 const wrongAt = (parsed: ReturnType<typeof stageDoneSchema.safeParse>) =>

@@ -1,11 +1,11 @@
 import { describe, expect, test } from 'vitest';
-import { bufferedRate } from '../../src/commission/currency';
-import { chargeG, makeUp } from '../../src/commission/pour-charge';
-import { planPourDay } from '../../src/commission/pour-day';
-import { priceQuote } from '../../src/commission/quote';
-import { findAlloy, heatMinor } from '../../src/commission/rates';
-import { failureChance } from '../../src/commission/soundness';
-import { advisedSpares, spareOptions } from '../../src/commission/spare-moulds';
+import { bufferedRate } from '../../src/commission/pricing/currency';
+import { chargeG, makeUp } from '../../src/commission/pricing/pour-charge';
+import { planPourDay } from '../../src/commission/pricing/pour-day';
+import { priceQuote } from '../../src/commission/pricing/quote';
+import { findAlloy, heatMinor } from '../../src/commission/pricing/rates';
+import { failureChance } from '../../src/commission/pricing/soundness';
+import { advisedSpares, spareOptions } from '../../src/commission/pricing/spare-moulds';
 import { palstaves } from '../../src/demo/drafts';
 import { demoRates } from '../../src/demo/rates';
 

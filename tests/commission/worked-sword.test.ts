@@ -1,12 +1,12 @@
 import { describe, expect, test } from 'vitest';
-import { cancellationStatement } from '../../src/commission/cancellation';
-import { costLine, unitCostMinor } from '../../src/commission/cost-lines';
-import { sumLines } from '../../src/commission/cost-sums';
-import { dateRange } from '../../src/commission/date-range';
-import { committedMinor, costToFinish, expectedMargin, exposureMinor } from '../../src/commission/exposure';
-import { priceQuote } from '../../src/commission/quote';
-import { heatMinor } from '../../src/commission/rates';
-import { afterPour, failureChance } from '../../src/commission/soundness';
+import { cancellationStatement } from '../../src/commission/pricing/cancellation';
+import { costLine, unitCostMinor } from '../../src/commission/pricing/cost-lines';
+import { sumLines } from '../../src/commission/pricing/cost-sums';
+import { dateRange } from '../../src/commission/pricing/date-range';
+import { committedMinor, costToFinish, expectedMargin, exposureMinor } from '../../src/commission/pricing/exposure';
+import { priceQuote } from '../../src/commission/pricing/quote';
+import { heatMinor } from '../../src/commission/pricing/rates';
+import { afterPour, failureChance } from '../../src/commission/pricing/soundness';
 import { swordFromFile } from '../../src/demo/drafts';
 import { demoRates } from '../../src/demo/rates';
 

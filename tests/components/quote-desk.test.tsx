@@ -3,10 +3,10 @@ import userEvent from '@testing-library/user-event';
 import { HttpResponse, http } from 'msw';
 import { setupServer } from 'msw/node';
 import { afterAll, afterEach, beforeAll, describe, expect, it } from 'vitest';
-import { deskFields } from '../../src/commission/desk-fields';
+import { deskFields } from '../../src/commission/pricing/desk-fields';
 import { formatMoney } from '../../src/commission/money';
-import { priceQuote } from '../../src/commission/quote';
-import type { QuoteDraft } from '../../src/commission/quote-draft';
+import { priceQuote } from '../../src/commission/pricing/quote';
+import type { QuoteDraft } from '../../src/commission/pricing/quote-draft';
 import { QuoteDesk } from '../../src/components/studio/QuoteDesk';
 import { swordFromFile } from '../../src/demo/drafts';
 

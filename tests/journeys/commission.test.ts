@@ -1,6 +1,6 @@
 import type { Browser, Page } from 'playwright-core';
 import { afterAll, afterEach, beforeAll, beforeEach, describe, expect, it } from 'vitest';
-import { readPieces } from '../../src/server/pieces';
+import { readPieces } from '../../src/server/making/pieces';
 import { commission } from '../server/deal/deal-setting';
 import { Complaints, DESK, openChromium, openContext, PHONE, shoot } from './chromium';
 import { letterOf, linkTo, mailOf, mailsTo, signInParts } from './inbox';

@@ -2,7 +2,7 @@ import { randomUUID } from 'node:crypto';
 import type { Browser, Page } from 'playwright-core';
 import { afterAll, beforeAll, beforeEach, describe, expect, it } from 'vitest';
 import { openSession } from '../../src/server/auth/session';
-import { readPieces } from '../../src/server/pieces';
+import { readPieces } from '../../src/server/making/pieces';
 import { commission, sentQuote, type Setting } from '../server/deal/deal-setting';
 import { Complaints, DESK, openChromium, openContext, PHONE } from './chromium';
 import { mailOf, signInParts } from './inbox';

@@ -1,10 +1,10 @@
 import { randomUUID } from 'node:crypto';
 import { eq } from 'drizzle-orm';
 import type { Actor, Role } from '../../src/commission/permissions';
-import { acceptQuote } from '../../src/server/acceptance';
+import { acceptQuote } from '../../src/server/quote/acceptance';
 import { openSession } from '../../src/server/auth/session';
 import { users } from '../../src/server/db/schema/people';
-import { readBalance } from '../../src/server/ledger';
+import { readBalance } from '../../src/server/money/ledger';
 import type { Services } from '../../src/server/services';
 import { commission, newEnquiry, sentQuote, type Setting } from '../server/deal/deal-setting';
 import { Visitor } from './visitor';

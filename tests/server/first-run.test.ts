@@ -2,7 +2,7 @@ import { afterAll, beforeAll, describe, expect, test } from 'vitest';
 import { firstRun } from '../../src/launch/first-run';
 import { tray } from '../../src/server/db/schema/commissions';
 import { invitations } from '../../src/server/db/schema/people';
-import { currentRateCard } from '../../src/server/rates';
+import { currentRateCard } from '../../src/server/pricing/rates';
 import type { Services } from '../../src/server/services';
 import { createTestServices } from '../setup/database';
 

@@ -1,4 +1,4 @@
-import type { BenchCommission } from '../../server/bench-view';
+import type { BenchCommission } from '../../server/making/bench-view';
 
 const DAY = new Intl.DateTimeFormat('en-GB', { day: 'numeric', month: 'long', timeZone: 'UTC' });
 

@@ -1,5 +1,5 @@
-import { STAGE_ACTS, type PieceStage } from '../../commission/making';
-import type { BenchPiece } from '../../server/bench-view';
+import { STAGE_ACTS, type PieceStage } from '../../commission/making/making';
+import type { BenchPiece } from '../../server/making/bench-view';
 import type { RunnerStage } from '../ui/Runner';
 
 const SHORT: Partial<Record<PieceStage, string>> = {

@@ -1,5 +1,5 @@
 import { getCollection } from 'astro:content';
-import { formSchema, type Form } from '../../commission/form';
+import { formSchema, type Form } from '../../commission/pricing/form';
 
 /** All forms of the catalogue, each a valid form; a broken file stops the build with its name. */
 export async function readForms(): Promise<Form[]> {

@@ -1,5 +1,5 @@
 import { studioAlloy } from '../../casting/studio-alloys';
-import { differenceWords } from '../../commission/shown-price';
+import { differenceWords } from '../../commission/pricing/shown-price';
 import { RadioRows } from '../ui/RadioRows';
 import { usePriceState } from './price-context';
 

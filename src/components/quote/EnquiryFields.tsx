@@ -1,5 +1,5 @@
 import type { ReactNode } from 'react';
-import type { WordField } from '../../commission/enquiry-words';
+import type { WordField } from '../../commission/enquiry/enquiry-words';
 import { Checkbox } from '../ui/Checkbox';
 import { Field, type FieldProps } from '../ui/Field';
 import { Select } from '../ui/Select';

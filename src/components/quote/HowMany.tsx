@@ -1,5 +1,5 @@
 import type { Currency } from '../../commission/money';
-import type { Choice } from '../../commission/price-view';
+import type { Choice } from '../../commission/pricing/price-view';
 import { Checkbox } from '../ui/Checkbox';
 import { Field } from '../ui/Field';
 import { Select } from '../ui/Select';

@@ -1,4 +1,4 @@
-import type { Estimate } from '../../commission/pricing-results';
+import type { Estimate } from '../../commission/pricing/pricing-results';
 import { Money } from '../ui/Money';
 import { usePriceState } from './price-context';
 

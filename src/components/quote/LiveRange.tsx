@@ -1,5 +1,5 @@
 import { useEffect, useState } from 'react';
-import { rangeWords, taxWords, weeksWords } from '../../commission/shown-price';
+import { rangeWords, taxWords, weeksWords } from '../../commission/pricing/shown-price';
 import { usePriceState } from './price-context';
 
 const PAUSE_MS = 900;

@@ -1,4 +1,4 @@
-import { FORM_ONLY, OWN_ONLY, type EstimateField } from '../../commission/estimate-fields';
+import { FORM_ONLY, OWN_ONLY, type EstimateField } from '../../commission/pricing/estimate-fields';
 import { usePriceState } from './price-context';
 
 const MODES = [

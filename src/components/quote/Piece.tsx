@@ -1,8 +1,8 @@
 import { useDeferredValue, useEffect, useMemo, useState } from 'react';
 import { scaleDrawing } from '../../casting/scale-drawing';
 import type { Drawing } from '../../casting/drawing';
-import type { EstimateFields } from '../../commission/estimate-fields';
-import type { Choice, PriceChoices } from '../../commission/price-view';
+import type { EstimateFields } from '../../commission/pricing/estimate-fields';
+import type { Choice, PriceChoices } from '../../commission/pricing/price-view';
 import { FormDrawing } from '../catalogue/FormDrawing';
 import { Select } from '../ui/Select';
 import { fetchJson } from './fetch-json';

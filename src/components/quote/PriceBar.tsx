@@ -1,4 +1,4 @@
-import { rangeWords, weeksWords } from '../../commission/shown-price';
+import { rangeWords, weeksWords } from '../../commission/pricing/shown-price';
 import { usePriceState } from './price-context';
 
 /** The price at the foot of a narrow screen, once the page reckons by itself; leads to the price with its reasons. */

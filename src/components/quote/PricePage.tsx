@@ -1,5 +1,5 @@
 import type { SubmitEvent } from 'react';
-import type { Choice } from '../../commission/price-view';
+import type { Choice } from '../../commission/pricing/price-view';
 import { AlloyRows } from './AlloyRows';
 import { Dimensions } from './Dimensions';
 import { HowMany } from './HowMany';

@@ -1,5 +1,5 @@
-import type { Estimate } from '../../commission/pricing-results';
-import { moneyWords, rangeWords, shownMinor, taxWords, weeksWords } from '../../commission/shown-price';
+import type { Estimate } from '../../commission/pricing/pricing-results';
+import { moneyWords, rangeWords, shownMinor, taxWords, weeksWords } from '../../commission/pricing/shown-price';
 import { Distribution } from '../ui/Distribution';
 import { usePriceState } from './price-context';
 

@@ -1,4 +1,4 @@
-import { differenceWords, weeksWords } from '../../commission/shown-price';
+import { differenceWords, weeksWords } from '../../commission/pricing/shown-price';
 import { Money } from '../ui/Money';
 import { changeText } from './price-start';
 import { usePriceState } from './price-context';

@@ -1,4 +1,4 @@
-import { DESIGN_SOURCES, LICENCES, MARK_PLACES } from '../../commission/enquiry-choices';
+import { DESIGN_SOURCES, LICENCES, MARK_PLACES } from '../../commission/enquiry/enquiry-choices';
 import { WordChoice, WordInput } from './EnquiryFields';
 
 /** Where the design comes from, by what right it may be cast, and where the studio's mark goes. */

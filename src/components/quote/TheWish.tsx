@@ -1,4 +1,4 @@
-import { INTENDED_USES } from '../../commission/enquiry-choices';
+import { INTENDED_USES } from '../../commission/enquiry/enquiry-choices';
 import { RadioRows } from '../ui/RadioRows';
 import { useEnquiryState } from './enquiry-context';
 import { WordChoice, WordInput } from './EnquiryFields';

@@ -1,5 +1,5 @@
-import type { EstimateField } from '../../commission/estimate-fields';
-import type { Choice } from '../../commission/price-view';
+import type { EstimateField } from '../../commission/pricing/estimate-fields';
+import type { Choice } from '../../commission/pricing/price-view';
 import { Select } from '../ui/Select';
 import { usePriceState } from './price-context';
 

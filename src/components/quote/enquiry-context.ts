@@ -1,5 +1,5 @@
 import { createContext, useContext } from 'react';
-import type { WordFields } from '../../commission/enquiry-words';
+import type { WordFields } from '../../commission/enquiry/enquiry-words';
 import type { EnquiryPage } from './use-enquiry';
 
 /** The running form, and what it began with. */

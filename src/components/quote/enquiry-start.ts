@@ -1,5 +1,5 @@
-import type { EstimateFields } from '../../commission/estimate-fields';
-import type { WordFields } from '../../commission/enquiry-words';
+import type { EstimateFields } from '../../commission/pricing/estimate-fields';
+import type { WordFields } from '../../commission/enquiry/enquiry-words';
 import type { Problem } from '../../commission/problem';
 
 /** What the enquiry's form begins with. */

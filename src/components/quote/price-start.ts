@@ -1,6 +1,6 @@
-import { estimateQuery, readFields, settleFields, type EstimateFields } from '../../commission/estimate-fields';
-import type { RateCard } from '../../commission/estimate-request';
-import { priceView, type Choice, type PriceView } from '../../commission/price-view';
+import { estimateQuery, readFields, settleFields, type EstimateFields } from '../../commission/pricing/estimate-fields';
+import type { RateCard } from '../../commission/pricing/estimate-request';
+import { priceView, type Choice, type PriceView } from '../../commission/pricing/price-view';
 
 /** What the price page begins with: drawn by the server, taken over by the page. */
 export interface PriceStart {

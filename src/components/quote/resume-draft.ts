@@ -1,4 +1,4 @@
-import { ESTIMATE_FIELDS } from '../../commission/estimate-fields';
+import { ESTIMATE_FIELDS } from '../../commission/pricing/estimate-fields';
 import { readDraft } from './draft';
 
 /** On the enquiry's page without a piece: goes on with the piece this browser priced last, if there is one. */

@@ -2,8 +2,14 @@ import { zodResolver } from '@hookform/resolvers/zod';
 import { useEffect, useState } from 'react';
 import { useForm, type Resolver, type UseFormRegisterReturn } from 'react-hook-form';
 import { z } from 'zod';
-import { enquirySchema, missingDeclaration, type Enquiry, type EnquiryInput } from '../../commission/enquiry';
-import { readWords, WORD_FIELDS, WORD_TICKS, type WordField, type WordFields } from '../../commission/enquiry-words';
+import { enquirySchema, missingDeclaration, type Enquiry, type EnquiryInput } from '../../commission/enquiry/enquiry';
+import {
+  readWords,
+  WORD_FIELDS,
+  WORD_TICKS,
+  type WordField,
+  type WordFields,
+} from '../../commission/enquiry/enquiry-words';
 import type { Problem } from '../../commission/problem';
 import { draftNumber, dropDraft, keepDraft, readDraft } from './draft';
 import type { EnquiryStart } from './enquiry-start';

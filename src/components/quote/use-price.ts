@@ -7,10 +7,10 @@ import {
   TICKS,
   type EstimateField,
   type EstimateFields,
-} from '../../commission/estimate-fields';
-import { rateCardSchema, type RateCard } from '../../commission/estimate-request';
-import { priceView, type PriceView } from '../../commission/price-view';
-import type { Estimate } from '../../commission/pricing-results';
+} from '../../commission/pricing/estimate-fields';
+import { rateCardSchema, type RateCard } from '../../commission/pricing/estimate-request';
+import { priceView, type PriceView } from '../../commission/pricing/price-view';
+import type { Estimate } from '../../commission/pricing/pricing-results';
 import { keepDraft, readDraft } from './draft';
 import { fetchJson } from './fetch-json';
 import type { PriceStart } from './price-start';

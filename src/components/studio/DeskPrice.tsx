@@ -1,7 +1,7 @@
 import type { UseFormReturn } from 'react-hook-form';
-import type { DeskFields } from '../../commission/desk-fields';
+import type { DeskFields } from '../../commission/pricing/desk-fields';
 import { formatMoney } from '../../commission/money';
-import type { PricedQuote } from '../../commission/pricing-results';
+import type { PricedQuote } from '../../commission/pricing/pricing-results';
 import { Field } from '../ui/Field';
 import { RadioRows } from '../ui/RadioRows';
 

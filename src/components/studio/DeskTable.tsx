@@ -1,7 +1,7 @@
 import type { UseFormReturn } from 'react-hook-form';
-import { atRepour, unitCostMinor, type CostLine } from '../../commission/cost-lines';
-import type { DeskFields } from '../../commission/desk-fields';
-import type { QuoteDraft } from '../../commission/quote-draft';
+import { atRepour, unitCostMinor, type CostLine } from '../../commission/pricing/cost-lines';
+import type { DeskFields } from '../../commission/pricing/desk-fields';
+import type { QuoteDraft } from '../../commission/pricing/quote-draft';
 
 interface DeskTableProps {
   form: UseFormReturn<DeskFields>;

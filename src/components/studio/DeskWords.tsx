@@ -1,5 +1,5 @@
 import type { UseFormReturn } from 'react-hook-form';
-import type { DeskFields } from '../../commission/desk-fields';
+import type { DeskFields } from '../../commission/pricing/desk-fields';
 import type { Currency } from '../../commission/money';
 import { Field } from '../ui/Field';
 

@@ -1,8 +1,8 @@
 import { useEffect, useState, type SyntheticEvent } from 'react';
 import { useForm } from 'react-hook-form';
-import { BLANK_LINE, type DeskFields } from '../../commission/desk-fields';
+import { BLANK_LINE, type DeskFields } from '../../commission/pricing/desk-fields';
 import type { Problem } from '../../commission/problem';
-import type { QuoteDraft } from '../../commission/quote-draft';
+import type { QuoteDraft } from '../../commission/pricing/quote-draft';
 import { Button } from '../ui/Button';
 import { FormProblem } from '../ui/FormProblem';
 import { Notice } from '../ui/Notice';

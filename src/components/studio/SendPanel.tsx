@@ -1,6 +1,6 @@
 import { formatMoney } from '../../commission/money';
-import type { PricedQuote } from '../../commission/pricing-results';
-import type { QuoteDraft } from '../../commission/quote-draft';
+import type { PricedQuote } from '../../commission/pricing/pricing-results';
+import type { QuoteDraft } from '../../commission/pricing/quote-draft';
 import { Button } from '../ui/Button';
 import { Checkbox } from '../ui/Checkbox';
 

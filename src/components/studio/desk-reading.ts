@@ -1,9 +1,9 @@
-import type { CostLine } from '../../commission/cost-lines';
-import { deskSchema } from '../../commission/desk';
-import { applyDesk, fieldsWithTyped, type DeskFields } from '../../commission/desk-fields';
-import type { PricedQuote } from '../../commission/pricing-results';
-import { priceQuote } from '../../commission/quote';
-import type { QuoteDraft } from '../../commission/quote-draft';
+import type { CostLine } from '../../commission/pricing/cost-lines';
+import { deskSchema } from '../../commission/pricing/desk';
+import { applyDesk, fieldsWithTyped, type DeskFields } from '../../commission/pricing/desk-fields';
+import type { PricedQuote } from '../../commission/pricing/pricing-results';
+import { priceQuote } from '../../commission/pricing/quote';
+import type { QuoteDraft } from '../../commission/pricing/quote-draft';
 
 /** A desk as it stands: the draft it makes and its price; while a field cannot be read, the last ones that could. */
 export interface DeskReading {

@@ -1,4 +1,4 @@
-import type { DeskFields } from '../../commission/desk-fields';
+import type { DeskFields } from '../../commission/pricing/desk-fields';
 import type { Problem } from '../../commission/problem';
 
 /** What came of saving: the new version, or why not. */

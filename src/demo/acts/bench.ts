@@ -1,12 +1,12 @@
-import { nextStage, STAGE_OPERATIONS, type PieceStage, type ScrapCause } from '../../commission/making';
-import type { QuoteDraft } from '../../commission/quote-draft';
-import { decideGate, latestGate } from '../../server/gates';
-import { reachStage } from '../../server/making';
-import { logMinutes } from '../../server/minutes';
-import { storePhoto } from '../../server/photos';
-import { readPieces } from '../../server/pieces';
-import { acceptedDraft } from '../../server/promise';
-import { scrapCasting } from '../../server/scrap';
+import { nextStage, STAGE_OPERATIONS, type PieceStage, type ScrapCause } from '../../commission/making/making';
+import type { QuoteDraft } from '../../commission/pricing/quote-draft';
+import { decideGate, latestGate } from '../../server/making/gates';
+import { reachStage } from '../../server/making/making';
+import { logMinutes } from '../../server/making/minutes';
+import { storePhoto } from '../../server/making/photos';
+import { readPieces } from '../../server/making/pieces';
+import { acceptedDraft } from '../../server/quote/promise';
+import { scrapCasting } from '../../server/making/scrap';
 import { commissionOf, must, type World } from '../world';
 
 const MOST_AT_ONCE = 720;

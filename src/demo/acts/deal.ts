@@ -1,16 +1,16 @@
 import { eq, sql } from 'drizzle-orm';
-import { enquirySchema, type EnquiryInput } from '../../commission/enquiry';
-import { quoteDraftSchema, type QuoteDraft } from '../../commission/quote-draft';
+import { enquirySchema, type EnquiryInput } from '../../commission/enquiry/enquiry';
+import { quoteDraftSchema, type QuoteDraft } from '../../commission/pricing/quote-draft';
 import { CURRENT_TERMS } from '../../commission/terms';
-import { sendEstimateSchema } from '../../commission/triage';
-import { acceptQuote } from '../../server/acceptance';
+import { sendEstimateSchema } from '../../commission/enquiry/triage';
+import { acceptQuote } from '../../server/quote/acceptance';
 import { commissions } from '../../server/db/schema/commissions';
 import { quoteDrafts } from '../../server/db/schema/quotes';
-import { sendEnquiry } from '../../server/enquiries';
-import { sendMessage } from '../../server/messages';
-import { openDesk } from '../../server/quote-desk';
-import { sendQuote } from '../../server/quotes';
-import { sendEstimate } from '../../server/triage';
+import { sendEnquiry } from '../../server/enquiry/enquiries';
+import { sendMessage } from '../../server/enquiry/messages';
+import { openDesk } from '../../server/quote/quote-desk';
+import { sendQuote } from '../../server/quote/quotes';
+import { sendEstimate } from '../../server/enquiry/triage';
 import { receiveUpload } from '../../server/uploads/receive-upload';
 import { commissionOf, must, type World } from '../world';
 

@@ -1,4 +1,4 @@
-import { dispatchCommission, finishCommission, recordDelivery } from '../../server/finishing';
+import { dispatchCommission, finishCommission, recordDelivery } from '../../server/making/finishing';
 import { must, type World } from '../world';
 import { reach } from './bench';
 

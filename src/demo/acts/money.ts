@@ -1,6 +1,6 @@
-import { bookEntry, acceptedStages, type StagePayment } from '../../server/ledger';
+import { bookEntry, acceptedStages, type StagePayment } from '../../server/money/ledger';
 import { lockCommission } from '../../server/commissions';
-import { welcomePayment } from '../../server/payments';
+import { welcomePayment } from '../../server/money/payments';
 import { commissionOf, type World } from '../world';
 
 /** The customer pays the stage of that trigger in full, and what follows from it happens. */

@@ -3,7 +3,7 @@ import { rm, writeFile } from 'node:fs/promises';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import type { Config } from '../../server/config';
-import { PHOTO_SIZES, putSizes } from '../../server/photos';
+import { PHOTO_SIZES, putSizes } from '../../server/making/photos';
 import { makePictures } from '../../server/uploads/pictures';
 import { must, type StoredPicture } from '../world';
 import { axePictures } from './gallery-axes';

@@ -1,5 +1,5 @@
-import type { PieceStage } from '../../commission/making';
-import type { QuoteDraft } from '../../commission/quote-draft';
+import type { PieceStage } from '../../commission/making/making';
+import type { QuoteDraft } from '../../commission/pricing/quote-draft';
 import { approveGate, photo, reach, type Shot, type StepFacts, work, workBeforeGate } from '../acts/bench';
 import { accept, address, enquire, quote, type SentFile } from '../acts/deal';
 import { pay } from '../acts/money';

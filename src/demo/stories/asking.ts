@@ -1,11 +1,11 @@
 import { eq } from 'drizzle-orm';
-import { suggestQuestions } from '../../commission/checklist';
+import { suggestQuestions } from '../../commission/enquiry/checklist';
 import { commissions } from '../../server/db/schema/commissions';
-import { factsOf, readUploads } from '../../server/enquiry-mails';
+import { factsOf, readUploads } from '../../server/enquiry/enquiry-mails';
 import { lapseQuotes } from '../../server/jobs/clock';
-import { askQuestions } from '../../server/questions';
-import { recordRights } from '../../server/rights';
-import { declineEnquiry } from '../../server/triage';
+import { askQuestions } from '../../server/enquiry/questions';
+import { recordRights } from '../../server/enquiry/rights';
+import { declineEnquiry } from '../../server/enquiry/triage';
 import { enquire, estimateSent, message, quote } from '../acts/deal';
 import { ago, exactly } from '../clock';
 import { gougeFileInInches } from '../files/meshes';

@@ -1,10 +1,10 @@
 import { and, eq } from 'drizzle-orm';
 import { uuidv7 } from 'uuidv7';
-import { taxedLine, sumDocument } from '../../commission/tax';
+import { taxedLine, sumDocument } from '../../commission/pricing/tax';
 import { commissions } from '../../server/db/schema/commissions';
 import { pieces } from '../../server/db/schema/making';
 import { stagePayments } from '../../server/db/schema/quotes';
-import { acceptedStages } from '../../server/ledger';
+import { acceptedStages } from '../../server/money/ledger';
 import { photo, work } from '../acts/bench';
 import { message } from '../acts/deal';
 import { arrive, finish, send } from '../acts/leaving';

@@ -1,10 +1,10 @@
-import type { QuoteDraft } from '../../commission/quote-draft';
-import { cancellationStatement } from '../../commission/cancellation';
+import type { QuoteDraft } from '../../commission/pricing/quote-draft';
+import { cancellationStatement } from '../../commission/pricing/cancellation';
 import { formatMoney } from '../../commission/money';
 import { and, eq, ne } from 'drizzle-orm';
 import { stagePayments } from '../../server/db/schema/quotes';
 import { lockCommission } from '../../server/commissions';
-import { acceptedStages, bookEntry } from '../../server/ledger';
+import { acceptedStages, bookEntry } from '../../server/money/ledger';
 import { photo, reach, scrap, type Shot, work } from '../acts/bench';
 import { accept, address, enquire, estimateSent, message, quote } from '../acts/deal';
 import { pay } from '../acts/money';

@@ -1,9 +1,9 @@
 import { z } from 'zod';
 import { sendMail } from '../mail/send';
-import { reconcileCheckouts } from '../reconcile';
+import { reconcileCheckouts } from '../money/reconcile';
 import type { Services } from '../services';
-import { sweepSignIns } from '../sign-in-sweep';
-import { sweepFiles } from '../sweep-files';
+import { sweepSignIns } from '../people/sign-in-sweep';
+import { sweepFiles } from '../storage/sweep-files';
 import { sweepUploads } from '../uploads/read-upload';
 import { lapseDeposits, lapseQuotes, requeueMails } from './clock';
 

@@ -1,5 +1,5 @@
 import { z } from 'zod';
-import { PIECE_STAGES, SCRAP_CAUSES, type ScrapCause } from '../../commission/making';
+import { PIECE_STAGES, SCRAP_CAUSES, type ScrapCause } from '../../commission/making/making';
 import { currencySchema } from '../../commission/money';
 import type { LetterId } from './letter-ids';
 

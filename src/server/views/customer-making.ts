@@ -1,14 +1,14 @@
 import { asc, desc, eq } from 'drizzle-orm';
-import { runnerOf, type RunnerStep } from '../../commission/customer-runner';
-import { SCRAP_CAUSES, STAGE_ACTS, type PieceStage, type ScrapCause } from '../../commission/making';
+import { runnerOf, type RunnerStep } from '../../commission/making/customer-runner';
+import { SCRAP_CAUSES, STAGE_ACTS, type PieceStage, type ScrapCause } from '../../commission/making/making';
 import type { CommissionRow } from '../commissions';
 import type { Db } from '../db/client';
 import { events } from '../db/schema/commissions';
 import { photos } from '../db/schema/making';
 import { ledgerEntries } from '../db/schema/quotes';
 import { users } from '../db/schema/people';
-import { latestGate } from '../gates';
-import { readAttempts, readPieces } from '../pieces';
+import { latestGate } from '../making/gates';
+import { readAttempts, readPieces } from '../making/pieces';
 
 /** A photo as the customer sees it; sizes in pixels. */
 export interface ShownPhoto {

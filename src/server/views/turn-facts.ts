@@ -1,15 +1,15 @@
 import { and, desc, eq, inArray, isNotNull, isNull, like, max } from 'drizzle-orm';
 import type { Balance } from '../../commission/balance';
-import { PIECE_STAGES, nextStage, STAGE_ACTS } from '../../commission/making';
+import { PIECE_STAGES, nextStage, STAGE_ACTS } from '../../commission/making/making';
 import { currencySchema } from '../../commission/money';
-import type { TurnFacts, TurnPieces, WhoseTurn } from '../../commission/turn-facts';
-import { whoseTurn } from '../../commission/whose-turn';
+import type { TurnFacts, TurnPieces, WhoseTurn } from '../../commission/turn/turn-facts';
+import { whoseTurn } from '../../commission/turn/whose-turn';
 import type { CommissionRow } from '../commissions';
 import type { Db } from '../db/client';
 import { events, questions } from '../db/schema/commissions';
 import { attempts, gates, pieces } from '../db/schema/making';
 import { quotes } from '../db/schema/quotes';
-import { readBalances } from '../ledger';
+import { readBalances } from '../money/ledger';
 
 type PieceRow = typeof pieces.$inferSelect;
 

@@ -4,8 +4,8 @@ import { readSession } from '../../../src/server/auth/session';
 import { mails } from '../../../src/server/db/schema/studio';
 import { users } from '../../../src/server/db/schema/people';
 import type { Services } from '../../../src/server/services';
-import { requestSignIn, signInSchema } from '../../../src/server/sign-in';
-import type { SignedIn } from '../../../src/server/sign-in-spend';
+import { requestSignIn, signInSchema } from '../../../src/server/people/sign-in';
+import type { SignedIn } from '../../../src/server/people/sign-in-spend';
 
 /** A visitor at a documentation address (RFC 5737). */
 export const VISITOR = { client: '192.0.2.7' };

@@ -14,9 +14,9 @@ import {
   listPeople,
   setActive,
   withdrawInvitation,
-} from '../../../src/server/people';
+} from '../../../src/server/people/people';
 import type { Services } from '../../../src/server/services';
-import { spendLink } from '../../../src/server/sign-in-spend';
+import { spendLink } from '../../../src/server/people/sign-in-spend';
 import { createTestServices } from '../../setup/database';
 import { askAndRead, cookieOf, newestMail, person, whoIs } from './mailed';
 

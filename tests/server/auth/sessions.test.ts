@@ -1,11 +1,11 @@
 import { Auth } from '@auth/core';
 import { eq, sql } from 'drizzle-orm';
 import { afterAll, beforeAll, expect, it } from 'vitest';
-import { readAccount, signOutEverywhere, updateAccount } from '../../../src/server/account';
+import { readAccount, signOutEverywhere, updateAccount } from '../../../src/server/people/account';
 import { authConfig, authRequest } from '../../../src/server/auth/auth-config';
 import { endSessions, openSession, readSession } from '../../../src/server/auth/session';
 import { sessions, users } from '../../../src/server/db/schema/people';
-import { changeRole, setActive } from '../../../src/server/people';
+import { changeRole, setActive } from '../../../src/server/people/people';
 import type { Services } from '../../../src/server/services';
 import { createTestServices } from '../../setup/database';
 import { person, whoIs } from './mailed';

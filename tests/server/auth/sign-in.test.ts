@@ -4,8 +4,8 @@ import { openSession } from '../../../src/server/auth/session';
 import { sessions, signInRequests, users, verificationTokens } from '../../../src/server/db/schema/people';
 import { mails } from '../../../src/server/db/schema/studio';
 import type { Services } from '../../../src/server/services';
-import { mailSignIn, requestSignIn } from '../../../src/server/sign-in';
-import { readSignInLink, spendCode, spendLink } from '../../../src/server/sign-in-spend';
+import { mailSignIn, requestSignIn } from '../../../src/server/people/sign-in';
+import { readSignInLink, spendCode, spendLink } from '../../../src/server/people/sign-in-spend';
 import { createTestServices } from '../../setup/database';
 import { askAndRead, cookieOf, newestMail, person, VISITOR, whoIs } from './mailed';
 

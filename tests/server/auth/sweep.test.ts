@@ -4,8 +4,8 @@ import { limit } from '../../../src/server/auth/limit';
 import { openSession } from '../../../src/server/auth/session';
 import { sessions, signInRequests, verificationTokens } from '../../../src/server/db/schema/people';
 import type { Services } from '../../../src/server/services';
-import { spendLink } from '../../../src/server/sign-in-spend';
-import { sweepSignIns } from '../../../src/server/sign-in-sweep';
+import { spendLink } from '../../../src/server/people/sign-in-spend';
+import { sweepSignIns } from '../../../src/server/people/sign-in-sweep';
 import { createTestServices } from '../../setup/database';
 import { askAndRead, person, whoIs } from './mailed';
 

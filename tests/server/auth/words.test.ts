@@ -5,7 +5,7 @@ import { isKnownBrowser, knownBrowserMark } from '../../../src/server/auth/known
 import { safeNext } from '../../../src/server/auth/next-path';
 import { newCode, seal, unseal } from '../../../src/server/auth/secrets';
 import { countedAddress } from '../../../src/server/auth/visitor';
-import { codeSchema } from '../../../src/server/sign-in-spend';
+import { codeSchema } from '../../../src/server/people/sign-in-spend';
 
 describe('an address', () => {
   it.each([

@@ -1,10 +1,10 @@
 import { eq } from 'drizzle-orm';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
-import { acceptSchema } from '../../../src/commission/triage';
-import { acceptQuote } from '../../../src/server/acceptance';
+import { acceptSchema } from '../../../src/commission/enquiry/triage';
+import { acceptQuote } from '../../../src/server/quote/acceptance';
 import { events } from '../../../src/server/db/schema/commissions';
 import { acceptances, quotes, stagePayments } from '../../../src/server/db/schema/quotes';
-import { withdrawQuote, sendQuote } from '../../../src/server/quotes';
+import { withdrawQuote, sendQuote } from '../../../src/server/quote/quotes';
 import { readCustomerCommission } from '../../../src/server/views/customer-commission';
 import {
   codeOf,

@@ -1,18 +1,18 @@
 import { eq } from 'drizzle-orm';
 import { uuidv7 } from 'uuidv7';
-import { applyDesk, deskFields } from '../../../src/commission/desk-fields';
-import { deskSchema } from '../../../src/commission/desk';
-import { enquirySchema, type EnquiryInput } from '../../../src/commission/enquiry';
+import { applyDesk, deskFields } from '../../../src/commission/pricing/desk-fields';
+import { deskSchema } from '../../../src/commission/pricing/desk';
+import { enquirySchema, type EnquiryInput } from '../../../src/commission/enquiry/enquiry';
 import type { Actor, Role } from '../../../src/commission/permissions';
-import { quoteDraftSchema, type QuoteDraft } from '../../../src/commission/quote-draft';
+import { quoteDraftSchema, type QuoteDraft } from '../../../src/commission/pricing/quote-draft';
 import { demoRates } from '../../../src/demo/rates';
 import { commissions } from '../../../src/server/db/schema/commissions';
 import { users } from '../../../src/server/db/schema/people';
 import { quoteDrafts } from '../../../src/server/db/schema/quotes';
 import { mails, rateVersions } from '../../../src/server/db/schema/studio';
-import { sendEnquiry } from '../../../src/server/enquiries';
-import { openDesk, saveDraft } from '../../../src/server/quote-desk';
-import { sendQuote } from '../../../src/server/quotes';
+import { sendEnquiry } from '../../../src/server/enquiry/enquiries';
+import { openDesk, saveDraft } from '../../../src/server/quote/quote-desk';
+import { sendQuote } from '../../../src/server/quote/quotes';
 import type { Services } from '../../../src/server/services';
 import { createTestServices } from '../../setup/database';
 

@@ -1,13 +1,13 @@
 import { and, eq } from 'drizzle-orm';
 import { uuidv7 } from 'uuidv7';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
-import { enquirySchema } from '../../../src/commission/enquiry';
-import { estimate } from '../../../src/commission/estimate';
+import { enquirySchema } from '../../../src/commission/enquiry/enquiry';
+import { estimate } from '../../../src/commission/pricing/estimate';
 import { events, uploads } from '../../../src/server/db/schema/commissions';
 import { mails } from '../../../src/server/db/schema/studio';
-import { confirmEnquiries } from '../../../src/server/confirm-enquiries';
-import { sendEnquiry, waitingEnquiry } from '../../../src/server/enquiries';
-import { currentRateCard } from '../../../src/server/rates';
+import { confirmEnquiries } from '../../../src/server/enquiry/confirm-enquiries';
+import { sendEnquiry, waitingEnquiry } from '../../../src/server/enquiry/enquiries';
+import { currentRateCard } from '../../../src/server/pricing/rates';
 import { codeOf, commission, enquiry, letters, openSetting, SENDER, START, type Setting } from './deal-setting';
 
 let setting: Setting;

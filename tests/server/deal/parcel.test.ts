@@ -1,9 +1,9 @@
 import { eq } from 'drizzle-orm';
 import { afterAll, beforeAll, describe, expect, test } from 'vitest';
 import { parcelAddressSchema } from '../../../src/commission/parcel-address';
-import { addCommissionFile } from '../../../src/server/commission-files';
+import { addCommissionFile } from '../../../src/server/enquiry/commission-files';
 import { commissions, events, uploads } from '../../../src/server/db/schema/commissions';
-import { setParcelAddress } from '../../../src/server/parcel-address';
+import { setParcelAddress } from '../../../src/server/making/parcel-address';
 import { commission, newEnquiry, openSetting, type Setting } from './deal-setting';
 
 let setting: Setting;

@@ -1,9 +1,9 @@
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
-import { deskSchema } from '../../../src/commission/desk';
-import { deskFields } from '../../../src/commission/desk-fields';
+import { deskSchema } from '../../../src/commission/pricing/desk';
+import { deskFields } from '../../../src/commission/pricing/desk-fields';
 import { swordFromFile } from '../../../src/demo/drafts';
-import { openDesk, saveDraft } from '../../../src/server/quote-desk';
-import { sendQuote, withdrawQuote } from '../../../src/server/quotes';
+import { openDesk, saveDraft } from '../../../src/server/quote/quote-desk';
+import { sendQuote, withdrawQuote } from '../../../src/server/quote/quotes';
 import { codeOf, commission, deskOf, newEnquiry, openSetting, typedOver, type Setting } from './deal-setting';
 
 let setting: Setting;

@@ -7,11 +7,11 @@ import { demoRates } from '../../../src/demo/rates';
 import { commissions } from '../../../src/server/db/schema/commissions';
 import { quotes } from '../../../src/server/db/schema/quotes';
 import { mails, rateVersions } from '../../../src/server/db/schema/studio';
-import { isIntact } from '../../../src/server/quote-body';
-import { openDesk, repriceDraft } from '../../../src/server/quote-desk';
-import { customerView, readCustomerQuote, readQuotes } from '../../../src/server/quote-view';
-import { sendQuote, withdrawQuote } from '../../../src/server/quotes';
-import { recordRights } from '../../../src/server/rights';
+import { isIntact } from '../../../src/server/quote/quote-body';
+import { openDesk, repriceDraft } from '../../../src/server/quote/quote-desk';
+import { customerView, readCustomerQuote, readQuotes } from '../../../src/server/quote/quote-view';
+import { sendQuote, withdrawQuote } from '../../../src/server/quote/quotes';
+import { recordRights } from '../../../src/server/enquiry/rights';
 import {
   codeOf,
   commission,

@@ -3,12 +3,12 @@ import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import { uuidv7 } from 'uuidv7';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
-import { estimate } from '../../../src/commission/estimate';
-import { estimateRequestSchema } from '../../../src/commission/estimate-request';
-import { applyRates, ratesFields, ratesFormSchema } from '../../../src/commission/rates-form';
+import { estimate } from '../../../src/commission/pricing/estimate';
+import { estimateRequestSchema } from '../../../src/commission/pricing/estimate-request';
+import { applyRates, ratesFields, ratesFormSchema } from '../../../src/commission/pricing/rates-form';
 import { demoRates } from '../../../src/demo/rates';
 import { attempts } from '../../../src/server/db/schema/making';
-import { currentRateCard, currentRates, listRates, setRates } from '../../../src/server/rates';
+import { currentRateCard, currentRates, listRates, setRates } from '../../../src/server/pricing/rates';
 import { codeOf, commission, newEnquiry, openSetting, START, type Setting } from './deal-setting';
 
 let setting: Setting;

@@ -1,12 +1,12 @@
 import { eq } from 'drizzle-orm';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
-import { answersSchema, askSchema } from '../../../src/commission/checklist';
-import { declineSchema, sendEstimateSchema } from '../../../src/commission/triage';
+import { answersSchema, askSchema } from '../../../src/commission/enquiry/checklist';
+import { declineSchema, sendEstimateSchema } from '../../../src/commission/enquiry/triage';
 import { mails } from '../../../src/server/db/schema/studio';
-import { sendMessage } from '../../../src/server/messages';
-import { answerQuestions, askQuestions, readQuestions } from '../../../src/server/questions';
-import { recordRights } from '../../../src/server/rights';
-import { declineEnquiry, sendEstimate } from '../../../src/server/triage';
+import { sendMessage } from '../../../src/server/enquiry/messages';
+import { answerQuestions, askQuestions, readQuestions } from '../../../src/server/enquiry/questions';
+import { recordRights } from '../../../src/server/enquiry/rights';
+import { declineEnquiry, sendEstimate } from '../../../src/server/enquiry/triage';
 import { readOwnerCommission } from '../../../src/server/views/owner-commission';
 import { codeOf, commission, letters, newEnquiry, openSetting, type Setting } from './deal-setting';
 

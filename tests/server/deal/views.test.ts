@@ -1,7 +1,7 @@
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
-import { acceptQuote } from '../../../src/server/acceptance';
-import { sendEnquiry } from '../../../src/server/enquiries';
-import { sendMessage } from '../../../src/server/messages';
+import { acceptQuote } from '../../../src/server/quote/acceptance';
+import { sendEnquiry } from '../../../src/server/enquiry/enquiries';
+import { sendMessage } from '../../../src/server/enquiry/messages';
 import { listCustomerCommissions, readCustomerCommission } from '../../../src/server/views/customer-commission';
 import { readOwnerCommission } from '../../../src/server/views/owner-commission';
 import { readEnquiries, readTurnList } from '../../../src/server/views/turn-list';

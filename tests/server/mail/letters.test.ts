@@ -1,5 +1,5 @@
 import { describe, expect, test } from 'vitest';
-import { SCRAP_CAUSES } from '../../../src/commission/making';
+import { SCRAP_CAUSES } from '../../../src/commission/making/making';
 import { LETTER_DATA, type LetterData } from '../../../src/server/mail/letter-data';
 import { LETTER_IDS, type LetterId } from '../../../src/server/mail/letter-ids';
 import { renderLetter, type Frame } from '../../../src/server/mail/render';

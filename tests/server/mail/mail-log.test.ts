@@ -4,7 +4,7 @@ import { mails } from '../../../src/server/db/schema/studio';
 import { users } from '../../../src/server/db/schema/people';
 import { events } from '../../../src/server/db/schema/commissions';
 import { sendMail } from '../../../src/server/mail/send';
-import { listMails, mailLogSchema, sendMailAgain } from '../../../src/server/mail-log';
+import { listMails, mailLogSchema, sendMailAgain } from '../../../src/server/mail/mail-log';
 import { queueMail } from '../../../src/server/outbox';
 import { openPostOffice, type PostOffice } from './post-office';
 import { addCommission, mailRow, queueReceipt, setStudio } from './rows';

@@ -1,10 +1,10 @@
 // Job.md section 2: T14 to T16, T19 to T22, T27, T30 to T33. The route is read from the agreed quote.
 import { eq } from 'drizzle-orm';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
-import { costLine } from '../../../src/commission/cost-lines';
+import { costLine } from '../../../src/commission/pricing/cost-lines';
 import { events } from '../../../src/server/db/schema/commissions';
 import { stagePayments } from '../../../src/server/db/schema/quotes';
-import { finishCommission, recordDelivery } from '../../../src/server/finishing';
+import { finishCommission, recordDelivery } from '../../../src/server/making/finishing';
 import { codeOf, commission, letters } from '../deal/deal-setting';
 import {
   answerGate,

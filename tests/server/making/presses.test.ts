@@ -2,11 +2,11 @@
 import { eq } from 'drizzle-orm';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import type { Outcome } from '../../../src/commission/problem';
-import { minutesSchema } from '../../../src/commission/work-done';
+import { minutesSchema } from '../../../src/commission/making/work-done';
 import { commissions } from '../../../src/server/db/schema/commissions';
 import { minutesLog, timers } from '../../../src/server/db/schema/making';
-import { decideGate, latestGate } from '../../../src/server/gates';
-import { logMinutes, minutesOn, turnTimer } from '../../../src/server/minutes';
+import { decideGate, latestGate } from '../../../src/server/making/gates';
+import { logMinutes, minutesOn, turnTimer } from '../../../src/server/making/minutes';
 import { codeOf, commission } from '../deal/deal-setting';
 import {
   answerGate,

@@ -1,9 +1,9 @@
 // Job.md section 2, "Illegal moves that must be refused and tested", and the checks of T15, T19, T21, T23, T30 and T32.
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { eq } from 'drizzle-orm';
-import { scrapSchema, stageDoneSchema } from '../../../src/commission/work-done';
+import { scrapSchema, stageDoneSchema } from '../../../src/commission/making/work-done';
 import { commissions } from '../../../src/server/db/schema/commissions';
-import { finishCommission, recordDelivery } from '../../../src/server/finishing';
+import { finishCommission, recordDelivery } from '../../../src/server/making/finishing';
 import { codeOf, commission, type Person } from '../deal/deal-setting';
 import {
   answerGate,

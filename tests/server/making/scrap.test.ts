@@ -1,12 +1,12 @@
 // Job.md T23, T29, capabilities 1 and 7, and section 4.3 (mean of the beta posterior: alpha / (alpha + beta)).
 import { eq } from 'drizzle-orm';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
-import { SCRAP_CAUSES } from '../../../src/commission/making';
-import { draftFromEstimate } from '../../../src/commission/estimate';
-import { priceQuote } from '../../../src/commission/quote';
+import { SCRAP_CAUSES } from '../../../src/commission/making/making';
+import { draftFromEstimate } from '../../../src/commission/pricing/estimate';
+import { priceQuote } from '../../../src/commission/pricing/quote';
 import { photos } from '../../../src/server/db/schema/making';
-import { readPourRecord } from '../../../src/server/pour-record';
-import { currentRateCard, currentRates } from '../../../src/server/rates';
+import { readPourRecord } from '../../../src/server/making/pour-record';
+import { currentRateCard, currentRates } from '../../../src/server/pricing/rates';
 import { codeOf, commission, enquiry } from '../deal/deal-setting';
 import { attemptsOf, booked, bring, mailsOf, must, photograph, pieceOf, press, scrap } from '../../factories/bench';
 import { balance, countOf, historyOf, openPayingStudio, type PayingStudio } from '../../factories/paying-studio';

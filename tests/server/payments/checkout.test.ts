@@ -2,7 +2,7 @@
 import { eq } from 'drizzle-orm';
 import Stripe from 'stripe';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
-import { paySchema, startCheckout } from '../../../src/server/checkout';
+import { paySchema, startCheckout } from '../../../src/server/money/checkout';
 import { createOnce } from '../../../src/server/stripe/provider';
 import { commissions } from '../../../src/server/db/schema/commissions';
 import { codeOf, commission, newEnquiry, sentQuote } from '../deal/deal-setting';

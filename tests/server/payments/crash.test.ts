@@ -5,7 +5,7 @@ import { eq } from 'drizzle-orm';
 import { afterAll, beforeAll, expect, it } from 'vitest';
 import { pieces } from '../../../src/server/db/schema/making';
 import { stripeEvents } from '../../../src/server/db/schema/quotes';
-import { reconcileCheckouts } from '../../../src/server/reconcile';
+import { reconcileCheckouts } from '../../../src/server/money/reconcile';
 import { commission, letters } from '../deal/deal-setting';
 import {
   countOf,

@@ -2,7 +2,7 @@
 // _failed. Reliability plan row 7.
 import fc from 'fast-check';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
-import { reconcileSession } from '../../../src/server/payments';
+import { reconcileSession } from '../../../src/server/money/payments';
 import { commission, letters } from '../deal/deal-setting';
 import {
   agreed,

@@ -1,7 +1,7 @@
 import { sql } from 'drizzle-orm';
 import Stripe from 'stripe';
 import { readConfig } from '../../../src/server/config';
-import { recordStripeEvent } from '../../../src/server/payments';
+import { recordStripeEvent } from '../../../src/server/money/payments';
 import { createServices, type Services } from '../../../src/server/services';
 
 /**

@@ -2,9 +2,9 @@
 import { eq, sql } from 'drizzle-orm';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { ledgerEntries, stagePayments } from '../../../src/server/db/schema/quotes';
-import { acceptedStages, bookEntry } from '../../../src/server/ledger';
-import { readMoney } from '../../../src/server/money-view';
-import { readReceipt } from '../../../src/server/receipt';
+import { acceptedStages, bookEntry } from '../../../src/server/money/ledger';
+import { readMoney } from '../../../src/server/money/money-view';
+import { readReceipt } from '../../../src/server/money/receipt';
 import { codeOf, commission } from '../deal/deal-setting';
 import {
   agreed,

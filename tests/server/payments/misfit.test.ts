@@ -3,8 +3,8 @@ import { eq } from 'drizzle-orm';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { commissions, tray } from '../../../src/server/db/schema/commissions';
 import { checkoutSessions, stagePayments, quotes } from '../../../src/server/db/schema/quotes';
-import { reconcileSession } from '../../../src/server/payments';
-import { withdrawQuote } from '../../../src/server/quotes';
+import { reconcileSession } from '../../../src/server/money/payments';
+import { withdrawQuote } from '../../../src/server/quote/quotes';
 import { codeOf, commission, letters, newEnquiry, sentQuote } from '../deal/deal-setting';
 import {
   agreed,

@@ -1,10 +1,10 @@
 // Reliability plan row 3: webhooks off for 500 payments, all right after one run. Judge: sums at the Stripe fake.
 import { afterAll, beforeAll, expect, it } from 'vitest';
 import { eq } from 'drizzle-orm';
-import { readPaymentReturn } from '../../../src/server/payment-return';
+import { readPaymentReturn } from '../../../src/server/money/payment-return';
 import { checkoutSessions } from '../../../src/server/db/schema/quotes';
 import { TASKS } from '../../../src/server/jobs/tasks';
-import { reconcileCheckouts } from '../../../src/server/reconcile';
+import { reconcileCheckouts } from '../../../src/server/money/reconcile';
 import { codeOf, commission, letters } from '../deal/deal-setting';
 import {
   agreed,

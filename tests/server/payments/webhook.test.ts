@@ -4,7 +4,7 @@ import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { pieces } from '../../../src/server/db/schema/making';
 import { checkoutSessions, stagePayments } from '../../../src/server/db/schema/quotes';
 import { mails } from '../../../src/server/db/schema/studio';
-import { reconcileSession } from '../../../src/server/payments';
+import { reconcileSession } from '../../../src/server/money/payments';
 import { commission, letters } from '../deal/deal-setting';
 import {
   agreed,

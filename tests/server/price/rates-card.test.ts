@@ -1,11 +1,11 @@
 import fc from 'fast-check';
 import { afterAll, beforeAll, expect, it } from 'vitest';
-import { rateCardSchema, type RateCard } from '../../../src/commission/estimate-request';
-import { reckon } from '../../../src/commission/price-view';
+import { rateCardSchema, type RateCard } from '../../../src/commission/pricing/estimate-request';
+import { reckon } from '../../../src/commission/pricing/price-view';
 import { demoRates } from '../../../src/demo/rates';
 import { GET } from '../../../src/pages/api/rates/card';
 import { POST } from '../../../src/pages/api/estimates/index';
-import { currentRateCard } from '../../../src/server/rates';
+import { currentRateCard } from '../../../src/server/pricing/rates';
 import { rateVersions } from '../../../src/server/db/schema/studio';
 import type { Services } from '../../../src/server/services';
 import { anyFields } from '../../commission/any-fields';

@@ -1,5 +1,5 @@
 import type { APIRoute } from 'astro';
-import { accountSchema, updateAccount } from '../../../server/account';
+import { accountSchema, updateAccount } from '../../../server/people/account';
 import { answer, readInput } from '../../../server/door';
 
 export const prerender = false;

@@ -1,10 +1,10 @@
 import type { APIRoute } from 'astro';
 import { z } from 'zod';
-import { enquirySchema } from '../../../commission/enquiry';
-import { readFields, spokenQuery } from '../../../commission/estimate-fields';
+import { enquirySchema } from '../../../commission/enquiry/enquiry';
+import { readFields, spokenQuery } from '../../../commission/pricing/estimate-fields';
 import { rememberAsked, visitorOf } from '../../../server/auth/door-cookies';
 import { answer, readInput } from '../../../server/door';
-import { sendEnquiry } from '../../../server/enquiries';
+import { sendEnquiry } from '../../../server/enquiry/enquiries';
 
 export const prerender = false;
 

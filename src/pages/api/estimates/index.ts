@@ -1,8 +1,8 @@
 import type { APIRoute } from 'astro';
-import { estimateRequestSchema } from '../../../commission/estimate-request';
+import { estimateRequestSchema } from '../../../commission/pricing/estimate-request';
 import { visitorOf } from '../../../server/auth/door-cookies';
 import { json, jsonProblem, readInput } from '../../../server/door';
-import { makeEstimate } from '../../../server/estimates';
+import { makeEstimate } from '../../../server/pricing/estimates';
 
 export const prerender = false;
 

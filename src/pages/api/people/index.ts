@@ -1,6 +1,6 @@
 import type { APIRoute } from 'astro';
 import { answer, readInput } from '../../../server/door';
-import { invitePerson, inviteSchema } from '../../../server/people';
+import { invitePerson, inviteSchema } from '../../../server/people/people';
 
 export const prerender = false;
 

@@ -1,6 +1,6 @@
 import type { APIRoute } from 'astro';
 import { answer, readInput } from '../../../server/door';
-import { withdrawInvitation, withdrawSchema } from '../../../server/people';
+import { withdrawInvitation, withdrawSchema } from '../../../server/people/people';
 
 export const prerender = false;
 

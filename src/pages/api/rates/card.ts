@@ -1,6 +1,6 @@
 import { createHash } from 'node:crypto';
 import type { APIRoute } from 'astro';
-import { readPublicCard } from '../../../server/estimates';
+import { readPublicCard } from '../../../server/pricing/estimates';
 
 export const prerender = false;
 

@@ -1,5 +1,5 @@
 import type { APIRoute } from 'astro';
-import { fromPrices } from '../../../server/from-prices';
+import { fromPrices } from '../../../server/pricing/from-prices';
 
 export const prerender = false;
 

@@ -2,7 +2,7 @@ import type { APIRoute } from 'astro';
 import { done } from '../../../commission/problem';
 import { keepSession, sessionTokenOf, visitorOf } from '../../../server/auth/door-cookies';
 import { answer, readInput } from '../../../server/door';
-import { codeSchema, spendCode } from '../../../server/sign-in-spend';
+import { codeSchema, spendCode } from '../../../server/people/sign-in-spend';
 
 export const prerender = false;
 

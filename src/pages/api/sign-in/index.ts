@@ -1,7 +1,7 @@
 import type { APIRoute } from 'astro';
 import { rememberAsked, visitorOf } from '../../../server/auth/door-cookies';
 import { answer, readInput } from '../../../server/door';
-import { requestSignIn, signInSchema } from '../../../server/sign-in';
+import { requestSignIn, signInSchema } from '../../../server/people/sign-in';
 
 export const prerender = false;
 

@@ -2,7 +2,7 @@ import type { APIRoute } from 'astro';
 import { done } from '../../../commission/problem';
 import { keepSession, sessionTokenOf } from '../../../server/auth/door-cookies';
 import { answer, readInput } from '../../../server/door';
-import { spendLink, spendSchema } from '../../../server/sign-in-spend';
+import { spendLink, spendSchema } from '../../../server/people/sign-in-spend';
 
 export const prerender = false;
 

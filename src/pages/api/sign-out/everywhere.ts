@@ -1,6 +1,6 @@
 import type { APIRoute } from 'astro';
 import { z } from 'zod';
-import { signOutEverywhere } from '../../../server/account';
+import { signOutEverywhere } from '../../../server/people/account';
 import { dropSession } from '../../../server/auth/door-cookies';
 import { answer, readInput } from '../../../server/door';
 

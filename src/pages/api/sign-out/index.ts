@@ -1,6 +1,6 @@
 import type { APIRoute } from 'astro';
 import { z } from 'zod';
-import { signOut } from '../../../server/account';
+import { signOut } from '../../../server/people/account';
 import { dropSession, sessionTokenOf } from '../../../server/auth/door-cookies';
 import { answer, readInput } from '../../../server/door';
 

@@ -1,6 +1,6 @@
 import type { APIRoute } from 'astro';
 import { json } from '../../../server/door';
-import { recordStripeEvent } from '../../../server/payments';
+import { recordStripeEvent } from '../../../server/money/payments';
 import { verifyStripeEvent } from '../../../server/stripe/verify';
 
 export const prerender = false;

@@ -1,7 +1,7 @@
 import type { APIRoute } from 'astro';
-import { ratesFormSchema } from '../../../commission/rates-form';
+import { ratesFormSchema } from '../../../commission/pricing/rates-form';
 import { answer, readInput } from '../../../server/door';
-import { setRates } from '../../../server/rates';
+import { setRates } from '../../../server/pricing/rates';
 
 export const prerender = false;
 

@@ -1,5 +1,5 @@
 import { boolean, index, integer, jsonb, pgEnum, pgTable, text, unique, uuid } from 'drizzle-orm/pg-core';
-import { PIECE_STAGES } from '../../../commission/making';
+import { PIECE_STAGES } from '../../../commission/making/making';
 import { commissions } from './commissions';
 import { instant, users } from './people';
 

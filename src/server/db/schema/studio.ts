@@ -1,5 +1,5 @@
 import { type AnyPgColumn, index, integer, jsonb, pgEnum, pgTable, text, uuid } from 'drizzle-orm/pg-core';
-import type { StudioRates } from '../../../commission/rates';
+import type { StudioRates } from '../../../commission/pricing/rates';
 import { commissions } from './commissions';
 import { instant, users } from './people';
 

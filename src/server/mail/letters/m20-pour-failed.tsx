@@ -1,4 +1,4 @@
-import { SCRAP_CAUSES } from '../../../commission/making';
+import { SCRAP_CAUSES } from '../../../commission/making/making';
 import { spanInWords } from '../letter-words';
 import { letter, pageOf } from './letter';
 import { Note, P, Part, Pictures } from './letter-parts';

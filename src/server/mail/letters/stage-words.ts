@@ -1,4 +1,4 @@
-import type { PieceStage } from '../../../commission/making';
+import type { PieceStage } from '../../../commission/making/making';
 
 interface StageWords {
   heading: string;

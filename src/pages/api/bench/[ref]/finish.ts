@@ -1,6 +1,6 @@
 import type { APIRoute } from 'astro';
 import { answer } from '../../../../server/door';
-import { finishCommission } from '../../../../server/finishing';
+import { finishCommission } from '../../../../server/making/finishing';
 
 export const prerender = false;
 

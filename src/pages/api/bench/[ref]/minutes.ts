@@ -1,7 +1,7 @@
 import type { APIRoute } from 'astro';
-import { minutesSchema } from '../../../../commission/work-done';
+import { minutesSchema } from '../../../../commission/making/work-done';
 import { answer, readInput } from '../../../../server/door';
-import { logMinutes } from '../../../../server/minutes';
+import { logMinutes } from '../../../../server/making/minutes';
 
 export const prerender = false;
 

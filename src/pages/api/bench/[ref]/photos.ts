@@ -1,6 +1,6 @@
 import type { APIRoute } from 'astro';
 import { answer } from '../../../../server/door';
-import { addPhoto } from '../../../../server/receive-photo';
+import { addPhoto } from '../../../../server/making/receive-photo';
 
 export const prerender = false;
 

@@ -1,7 +1,7 @@
 import type { APIRoute } from 'astro';
-import { scrapSchema } from '../../../../commission/work-done';
+import { scrapSchema } from '../../../../commission/making/work-done';
 import { answer, readInput } from '../../../../server/door';
-import { scrapCasting } from '../../../../server/scrap';
+import { scrapCasting } from '../../../../server/making/scrap';
 
 export const prerender = false;
 

@@ -1,7 +1,7 @@
 import type { APIRoute } from 'astro';
-import { stageDoneSchema } from '../../../../commission/work-done';
+import { stageDoneSchema } from '../../../../commission/making/work-done';
 import { answer, readInput } from '../../../../server/door';
-import { reachStage } from '../../../../server/making';
+import { reachStage } from '../../../../server/making/making';
 
 export const prerender = false;
 

@@ -1,7 +1,7 @@
 import type { APIRoute } from 'astro';
-import { timerSchema } from '../../../../commission/work-done';
+import { timerSchema } from '../../../../commission/making/work-done';
 import { answer, readInput } from '../../../../server/door';
-import { turnTimer } from '../../../../server/minutes';
+import { turnTimer } from '../../../../server/making/minutes';
 
 export const prerender = false;
 

@@ -1,6 +1,6 @@
 import type { APIRoute } from 'astro';
-import { acceptSchema } from '../../../../commission/triage';
-import { acceptQuote } from '../../../../server/acceptance';
+import { acceptSchema } from '../../../../commission/enquiry/triage';
+import { acceptQuote } from '../../../../server/quote/acceptance';
 import { answer, readInput } from '../../../../server/door';
 
 export const prerender = false;

@@ -1,7 +1,7 @@
 import type { APIRoute } from 'astro';
 import { parcelAddressSchema } from '../../../../commission/parcel-address';
 import { answer, readInput } from '../../../../server/door';
-import { setParcelAddress } from '../../../../server/parcel-address';
+import { setParcelAddress } from '../../../../server/making/parcel-address';
 
 export const prerender = false;
 

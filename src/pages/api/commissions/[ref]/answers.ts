@@ -1,7 +1,7 @@
 import type { APIRoute } from 'astro';
-import { answersSchema } from '../../../../commission/checklist';
+import { answersSchema } from '../../../../commission/enquiry/checklist';
 import { answer, readInput } from '../../../../server/door';
-import { answerQuestions } from '../../../../server/questions';
+import { answerQuestions } from '../../../../server/enquiry/questions';
 
 export const prerender = false;
 

@@ -1,7 +1,7 @@
 import type { APIRoute } from 'astro';
-import { declineSchema } from '../../../../commission/triage';
+import { declineSchema } from '../../../../commission/enquiry/triage';
 import { answer, readInput } from '../../../../server/door';
-import { declineEnquiry } from '../../../../server/triage';
+import { declineEnquiry } from '../../../../server/enquiry/triage';
 
 export const prerender = false;
 

@@ -1,6 +1,6 @@
 import type { APIRoute } from 'astro';
 import { answer } from '../../../../server/door';
-import { recordDelivery } from '../../../../server/finishing';
+import { recordDelivery } from '../../../../server/making/finishing';
 
 export const prerender = false;
 

@@ -1,7 +1,7 @@
 import type { APIRoute } from 'astro';
-import { dispatchSchema } from '../../../../commission/work-done';
+import { dispatchSchema } from '../../../../commission/making/work-done';
 import { answer, readInput } from '../../../../server/door';
-import { dispatchCommission } from '../../../../server/finishing';
+import { dispatchCommission } from '../../../../server/making/finishing';
 
 export const prerender = false;
 

@@ -1,7 +1,7 @@
 import type { APIRoute } from 'astro';
-import { sendEstimateSchema } from '../../../../commission/triage';
+import { sendEstimateSchema } from '../../../../commission/enquiry/triage';
 import { answer, readInput } from '../../../../server/door';
-import { sendEstimate } from '../../../../server/triage';
+import { sendEstimate } from '../../../../server/enquiry/triage';
 
 export const prerender = false;
 

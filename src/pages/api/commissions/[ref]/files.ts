@@ -1,5 +1,5 @@
 import type { APIRoute } from 'astro';
-import { addCommissionFile } from '../../../../server/commission-files';
+import { addCommissionFile } from '../../../../server/enquiry/commission-files';
 import { answer } from '../../../../server/door';
 
 export const prerender = false;

@@ -1,6 +1,6 @@
 import type { APIRoute } from 'astro';
 import { answer, readInput } from '../../../../server/door';
-import { decideGate, gateDecisionSchema } from '../../../../server/gates';
+import { decideGate, gateDecisionSchema } from '../../../../server/making/gates';
 
 export const prerender = false;
 

@@ -1,7 +1,7 @@
 import type { APIRoute } from 'astro';
-import { messageSchema } from '../../../../commission/triage';
+import { messageSchema } from '../../../../commission/enquiry/triage';
 import { answer, readInput } from '../../../../server/door';
-import { sendMessage } from '../../../../server/messages';
+import { sendMessage } from '../../../../server/enquiry/messages';
 
 export const prerender = false;
 

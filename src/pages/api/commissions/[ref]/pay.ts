@@ -1,5 +1,5 @@
 import type { APIRoute } from 'astro';
-import { paySchema, startCheckout } from '../../../../server/checkout';
+import { paySchema, startCheckout } from '../../../../server/money/checkout';
 import { answer, readInput } from '../../../../server/door';
 
 export const prerender = false;

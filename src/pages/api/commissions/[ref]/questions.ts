@@ -1,7 +1,7 @@
 import type { APIRoute } from 'astro';
-import { askSchema } from '../../../../commission/checklist';
+import { askSchema } from '../../../../commission/enquiry/checklist';
 import { answer, readInput } from '../../../../server/door';
-import { askQuestions } from '../../../../server/questions';
+import { askQuestions } from '../../../../server/enquiry/questions';
 
 export const prerender = false;
 

@@ -1,8 +1,8 @@
 import type { APIRoute } from 'astro';
 import { z } from 'zod';
-import { deskSchema } from '../../../../commission/desk';
+import { deskSchema } from '../../../../commission/pricing/desk';
 import { answer, json, jsonProblem, readInput } from '../../../../server/door';
-import { openDesk, repriceDraft, saveDraft } from '../../../../server/quote-desk';
+import { openDesk, repriceDraft, saveDraft } from '../../../../server/quote/quote-desk';
 
 export const prerender = false;
 

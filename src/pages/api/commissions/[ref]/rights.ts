@@ -1,7 +1,7 @@
 import type { APIRoute } from 'astro';
-import { rightsSchema } from '../../../../commission/rights';
+import { rightsSchema } from '../../../../commission/enquiry/rights';
 import { answer, readInput } from '../../../../server/door';
-import { recordRights } from '../../../../server/rights';
+import { recordRights } from '../../../../server/enquiry/rights';
 
 export const prerender = false;
 

@@ -1,6 +1,6 @@
 import type { APIRoute } from 'astro';
 import { answer, readInput } from '../../../../server/door';
-import { sendAgainSchema, sendMailAgain } from '../../../../server/mail-log';
+import { sendAgainSchema, sendMailAgain } from '../../../../server/mail/mail-log';
 
 export const prerender = false;
 

@@ -1,6 +1,6 @@
 import type { APIRoute } from 'astro';
 import { answer, readInput } from '../../../../server/door';
-import { activeSchema, setActive } from '../../../../server/people';
+import { activeSchema, setActive } from '../../../../server/people/people';
 
 export const prerender = false;
 

@@ -1,6 +1,6 @@
 import type { APIRoute } from 'astro';
 import { answer, readInput } from '../../../../server/door';
-import { changeRole, roleSchema } from '../../../../server/people';
+import { changeRole, roleSchema } from '../../../../server/people/people';
 
 export const prerender = false;
 

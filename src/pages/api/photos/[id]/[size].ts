@@ -1,7 +1,7 @@
 import type { APIRoute } from 'astro';
 import { jsonProblem } from '../../../../server/door';
 import { fileResponse } from '../../../../server/file-response';
-import { findPhoto } from '../../../../server/photos';
+import { findPhoto } from '../../../../server/making/photos';
 
 export const prerender = false;
 

@@ -1,7 +1,7 @@
 import type { APIRoute } from 'astro';
-import { sendQuoteSchema } from '../../../../../commission/desk';
+import { sendQuoteSchema } from '../../../../../commission/pricing/desk';
 import { answer, readInput } from '../../../../../server/door';
-import { sendQuote } from '../../../../../server/quotes';
+import { sendQuote } from '../../../../../server/quote/quotes';
 
 export const prerender = false;
 

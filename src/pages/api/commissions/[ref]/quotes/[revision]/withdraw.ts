@@ -1,7 +1,7 @@
 import type { APIRoute } from 'astro';
-import { withdrawSchema } from '../../../../../../commission/desk';
+import { withdrawSchema } from '../../../../../../commission/pricing/desk';
 import { answer, readInput } from '../../../../../../server/door';
-import { withdrawQuote } from '../../../../../../server/quotes';
+import { withdrawQuote } from '../../../../../../server/quote/quotes';
 
 export const prerender = false;
 
