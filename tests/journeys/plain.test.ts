@@ -69,7 +69,10 @@ describe('with scripts off', () => {
     await page.getByLabel('You may keep what I send').check();
     await page.getByRole('button', { name: 'Send the enquiry' }).click();
     await page.waitForURL(/again=/);
-    await page.getByText(/Give the date/).first().waitFor();
+    await page
+      .getByText(/Give the date/)
+      .first()
+      .waitFor();
     expect(await page.getByLabel('What have you in mind?').inputValue()).toContain('used in earnest');
     expect(await page.getByLabel('Name', { exact: true }).inputValue()).toBe(NAME);
     await page.getByLabel('No date').check();
