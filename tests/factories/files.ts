@@ -14,9 +14,8 @@ export async function picture(kind: 'jpeg' | 'png' | 'webp', width = 120, height
       pixels.set(corner ? [200, 30, 30] : [20, 60, 120], (y * width + x) * 3);
     }
   }
-  return sharp(pixels, { raw: { width, height, channels: 3 } })
-    [kind]()
-    .toBuffer();
+  const image = sharp(pixels, { raw: { width, height, channels: 3 } });
+  return image.toFormat(kind).toBuffer();
 }
 
 /** A JPEG as a phone takes it, held sideways: with its place, its maker, and the turn to be made (EXIF 3.0, tag 0x0112). */
