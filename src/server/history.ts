@@ -1,4 +1,4 @@
-import { and, eq, sql } from 'drizzle-orm';
+import { and, count, eq, max, sql } from 'drizzle-orm';
 import { DEAL_MOVES, mayMove, type DealMove, type DealState, type Mover } from '../commission/deal';
 import { done, refuse, type Outcome } from '../commission/problem';
 import type { Actor } from '../commission/permissions';
@@ -76,4 +76,17 @@ export async function moveDeal(
   }
   await recordEvent(db, { ...change, commissionId: commission.id, code: change.move, from: commission.deal, to });
   return done(to);
+}
+
+/** How often the deal has made a move, and when last; a piece that comes back is finished and sent a second time. */
+export async function timesMoved(
+  db: Db,
+  commissionId: string,
+  move: DealMove,
+): Promise<{ times: number; last: Date | null }> {
+  const [row] = await db
+    .select({ times: count(), last: max(events.at) })
+    .from(events)
+    .where(and(eq(events.commissionId, commissionId), eq(events.code, move)));
+  return row ?? { times: 0, last: null };
 }

@@ -6,7 +6,7 @@ import type { Dispatch } from '../../commission/making/work-done';
 import { findCommission, lockCommission, type CommissionRow } from '../commissions';
 import type { Transaction } from '../db/client';
 import { commissions } from '../db/schema/commissions';
-import { moveDeal } from '../history';
+import { moveDeal, timesMoved } from '../history';
 import { callInStages, readBalance } from '../money/ledger';
 import { newestPictures } from './making-mails';
 import { queueMail } from '../outbox';
@@ -38,6 +38,7 @@ export async function finishCommission(
         `${open.length || 'No'} of ${all.length} pieces still have to pass inspection before the customer is told.`,
       );
     }
+    const before = await timesMoved(tx, commission.id, 'T31');
     const moved = await moveDeal(tx, commission, {
       move: 'T31',
       mover: actor?.role === 'owner' ? 'owner' : 'maker',
@@ -50,8 +51,8 @@ export async function finishCommission(
       at: now,
     });
     if (!moved.ok) return moved;
-    await callInStages(tx, commission.id, ['gate-a', 'before-dispatch'], now);
-    await queueFinishedMail(services, tx, commission, all);
+    await callInStages(tx, commission.id, ['gate-a', 'before-dispatch', 'rework'], now);
+    await queueFinishedMail(services, tx, commission, all, before);
     return done({ deal: moved.value });
   });
 }
@@ -61,20 +62,21 @@ async function queueFinishedMail(
   tx: Transaction,
   commission: CommissionRow,
   all: PieceRow[],
+  before: { times: number; last: Date | null },
 ): Promise<void> {
   const now = services.now();
   const balance = await readBalance(tx, commission.id, now);
   await queueMail(tx, {
     letter: 'M23',
     to: commission.email,
-    cause: `M23:${commission.id}`,
+    cause: `M23:${commission.id}:${before.times + 1}`,
     commissionId: commission.id,
     at: now,
     data: {
       ref: commission.ref,
       title: commission.title,
       name: commission.customerName,
-      pictures: await newestPictures(tx, commission.id, 'inspected', 6),
+      pictures: await newestPictures(tx, commission.id, { stage: 'inspected', since: before.last }, 6),
       measured: all.flatMap((piece) =>
         piece.measured?.massG
           ? [
@@ -212,7 +214,7 @@ async function queueCareMail(tx: Transaction, commission: CommissionRow, now: Da
   await queueMail(tx, {
     letter: 'M26',
     to: commission.email,
-    cause: `M26:${commission.id}`,
+    cause: `M26:${commission.id}:${(await timesMoved(tx, commission.id, 'T33')).times}`,
     commissionId: commission.id,
     at: now,
     data: {

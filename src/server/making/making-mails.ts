@@ -1,8 +1,9 @@
-import { and, desc, eq, isNull, ne, or } from 'drizzle-orm';
+import { and, desc, eq, gt, isNull, ne, or } from 'drizzle-orm';
 import { nextStage, type PieceStage, type ScrapCause } from '../../commission/making/making';
 import type { CommissionRow } from '../commissions';
 import type { Transaction } from '../db/client';
 import { attempts, photos } from '../db/schema/making';
+import { timesMoved } from '../history';
 import { queueMail } from '../outbox';
 import type { PieceRow } from './pieces';
 import { pieceFacts } from '../quote/promise';
@@ -54,11 +55,12 @@ export async function queueProgressMail(
     .where(eq(attempts.commissionId, commission.id))
     .orderBy(desc(attempts.number))
     .limit(1);
+  const finished = await timesMoved(tx, commission.id, 'T31');
   await queueMail(tx, {
     letter: 'M19',
     to: commission.email,
-    // A re-pour goes through the same stages again and tells them again; its attempt number keeps the mails apart.
-    cause: `M19:${commission.id}:${progress.stage}:${tries?.number ?? 0}`,
+    // A re-pour and a piece that came back go through the same stages again and tell them again.
+    cause: `M19:${commission.id}:${progress.stage}:${tries?.number ?? 0}:${finished.times}`,
     commissionId: commission.id,
     at: services.now(),
     data: {
@@ -67,7 +69,7 @@ export async function queueProgressMail(
       reached: progress.pieces.length,
       pieces: progress.pieces.length,
       ...(next ? { next } : {}),
-      pictures: await newestPictures(tx, commission.id, progress.stage, 3),
+      pictures: await newestPictures(tx, commission.id, { stage: progress.stage, since: finished.last }, 3),
       ...leavesOf(commission),
     },
   });
@@ -108,8 +110,16 @@ export async function queueScrapMail(
   });
 }
 
-/** The newest shared photos of one stage, for a letter; those of a casting that was scrapped are told by its own letter. */
-export async function newestPictures(tx: Transaction, commissionId: string, stage: string, most: number) {
+/**
+ * The newest shared photos of one stage, for a letter; those of a casting that was scrapped are told by its own letter,
+ * those taken before `since` were told when the piece was finished the first time.
+ */
+export async function newestPictures(
+  tx: Transaction,
+  commissionId: string,
+  { stage, since }: { stage: string; since: Date | null },
+  most: number,
+) {
   const rows = await tx
     .select({ photoId: photos.id, caption: photos.caption, alt: photos.alt })
     .from(photos)
@@ -118,6 +128,7 @@ export async function newestPictures(tx: Transaction, commissionId: string, stag
       and(
         eq(photos.commissionId, commissionId),
         eq(photos.stage, stage),
+        since ? gt(photos.takenAt, since) : undefined,
         eq(photos.shared, true),
         or(isNull(attempts.result), ne(attempts.result, 'scrapped')),
       ),

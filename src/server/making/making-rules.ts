@@ -1,4 +1,4 @@
-import { and, eq } from 'drizzle-orm';
+import { and, eq, gt } from 'drizzle-orm';
 import type { DealState } from '../../commission/deal';
 import { nextStage, STAGE_ACTS } from '../../commission/making/making';
 import type { Role } from '../../commission/permissions';
@@ -7,6 +7,7 @@ import type { StageDone } from '../../commission/making/work-done';
 import type { CommissionRow } from '../commissions';
 import type { Transaction } from '../db/client';
 import { photos } from '../db/schema/making';
+import { timesMoved } from '../history';
 import { latestGate, patternPhotos } from './gates';
 import { readBalance } from '../money/ledger';
 import type { PieceRow } from './pieces';
@@ -107,10 +108,18 @@ async function checkInspection(
       },
     );
   }
+  // A piece that came back is looked at anew: photos of the first time say nothing of it.
+  const { last } = await timesMoved(tx, commission.id, 'T31');
   const [photo] = await tx
     .select({ id: photos.id })
     .from(photos)
-    .where(and(eq(photos.commissionId, commission.id), eq(photos.stage, 'inspected')))
+    .where(
+      and(
+        eq(photos.commissionId, commission.id),
+        eq(photos.stage, 'inspected'),
+        last ? gt(photos.takenAt, last) : undefined,
+      ),
+    )
     .limit(1);
   return photo
     ? done('step')

@@ -58,7 +58,7 @@ export async function acceptedStages(db: Db, commissionId: string): Promise<Stag
   return rows.map((row) => row.stage);
 }
 
-const PAY_WITHIN_DAYS = { 'gate-a': 7, 'before-dispatch': 14 } as const;
+const PAY_WITHIN_DAYS = { 'gate-a': 7, 'before-dispatch': 14, rework: 14 } as const;
 
 /** Makes the stages of these triggers due, each after the days it is given; one that is due already keeps its day. */
 export async function callInStages(
