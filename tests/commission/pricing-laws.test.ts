@@ -101,6 +101,7 @@ describe('laws of every quote', () => {
         const { bins } = priceQuote(draft);
         expect(sum(bins.map(({ probability }) => probability))).toBeCloseTo(1, 9);
         bins.slice(1).forEach((bin, i) => expect(bin.fromMinor).toBe(bins[i]?.toMinor));
+        expect(bins.length).toBeLessThanOrEqual(14);
       }),
     );
   });

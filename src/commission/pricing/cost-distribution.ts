@@ -86,20 +86,43 @@ export function costFigures(outcomes: readonly Outcome[], expected: number): Cos
   };
 }
 
-/** Steps a chart's axis may take, in minor units. */
-const STEPS = [100, 200, 500, 1000, 2000, 5000, 10_000, 20_000, 50_000, 100_000, 200_000, 500_000, 1_000_000];
+/** Steps a chart's columns may have: these times 1, 10, 100 and 1,000 units of the currency, in minor units. */
+const STEPS = [100, 1000, 10_000, 100_000].flatMap((decade) =>
+  [1, 1.5, 2, 2.5, 3, 4, 5, 6, 8].map((times) => times * decade),
+);
+const FEWEST = 6;
+/** A column under one in two hundred is drawn as nothing. */
+const EMPTY = 0.005;
 
 /**
  * Columns for a chart: equal steps from the cheapest outcome to the one that 99 in 100 stay below, at most `most` of them;
- * the last column also holds everything dearer. The chances sum to one.
+ * the last column also holds everything dearer. The chances sum to one. The hours are known at three points only, so
+ * narrow columns would show teeth that no pour has: the finest step that leaves the fewest columns empty is taken.
  */
-export function distributionBins(outcomes: readonly Outcome[], most = 16): Bin[] {
-  const lowest = outcomes[0]?.costMinor ?? 0;
-  const highest = costQuantile(outcomes, 0.99);
-  const step =
-    STEPS.find((size) => (highest - lowest) / size < most - 1) ?? Math.max(1, (highest - lowest) / (most - 1));
-  const start = Math.floor(lowest / step) * step;
-  const count = Math.max(1, Math.floor((highest - start) / step) + 1);
+export function distributionBins(outcomes: readonly Outcome[], most = 14): Bin[] {
+  const steps = STEPS.filter((step) => columnCount(outcomes, step) <= most);
+  const narrow = steps.filter((step) => columnCount(outcomes, step) >= FEWEST);
+  const widest = Math.max(1, (costQuantile(outcomes, 0.99) - lowest(outcomes)) / (most - 1));
+  const choices = (narrow.length > 0 ? narrow : [steps[0] ?? widest]).map((step) => columns(outcomes, step));
+  return choices.reduce((best, bins) => (empties(bins) < empties(best) ? bins : best));
+}
+
+function empties(bins: readonly Bin[]): number {
+  return bins.filter(({ probability }) => probability < EMPTY).length;
+}
+
+function lowest(outcomes: readonly Outcome[]): number {
+  return outcomes[0]?.costMinor ?? 0;
+}
+
+function columnCount(outcomes: readonly Outcome[], step: number): number {
+  const start = Math.floor(lowest(outcomes) / step) * step;
+  return Math.max(1, Math.floor((costQuantile(outcomes, 0.99) - start) / step) + 1);
+}
+
+function columns(outcomes: readonly Outcome[], step: number): Bin[] {
+  const start = Math.floor(lowest(outcomes) / step) * step;
+  const count = columnCount(outcomes, step);
   const bins = Array.from({ length: count }, (_, index) => ({
     fromMinor: start + index * step,
     toMinor: start + (index + 1) * step,

@@ -1,4 +1,5 @@
 import type { Subject } from './estimate-draft';
+import { formatMoney } from '../money';
 import type { EstimateRequest } from './estimate-request';
 import type { PricedQuote } from './pricing-results';
 import type { QuoteDraft } from './quote-draft';
@@ -35,8 +36,8 @@ export function assumptionsOf(
     subject.form
       ? `It is cast from ${pattern}.`
       : 'Mass, surface and hours are reckoned from your figures, before we have seen a drawing.',
-    `Hours and hour spread are our own for "${soundness.familyName}"; of our last ${sound + failed} such pours ${sound} were sound.`,
-    `Metal at ${(metal.ingotMinorPerKg / 100).toFixed(2)} ${priced.studio} per kg, rates of ${draft.ratesVersion}.`,
+    `Hours and their spread are our own for “${soundness.familyName}”; of our last ${sound + failed} such pours ${sound} were sound.`,
+    `Metal at ${formatMoney(metal.ingotMinorPerKg, priced.studio)} per kg, the studio’s rates ${draft.ratesVersion}.`,
     ...(lines.some(({ driver }) => driver === 'hours as asked for')
       ? ['Finishing hours as you set them, not our usual ones.']
       : []),
@@ -47,7 +48,7 @@ export function assumptionsOf(
         ]),
     draft.tax.kind === 'export'
       ? 'No tax of ours: the piece leaves the country. Duty and tax at your border are yours.'
-      : `Tax at ${percent(rates.vatRate)}.`,
+      : `VAT at ${percent(rates.vatRate)}.`,
     'A range is not an offer. A quote is firm until its date.',
   ];
 }

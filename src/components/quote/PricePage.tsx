@@ -12,7 +12,7 @@ import { PriceBar } from './PriceBar';
 import { PriceContext } from './price-context';
 import { PricePanel } from './PricePanel';
 import type { PriceStart } from './price-start';
-import { Reasons } from './Reasons';
+import { PriceAfter, Reasons } from './Reasons';
 import { Treatment } from './Treatment';
 import { PRICE_FORM, usePrice } from './use-price';
 
@@ -60,7 +60,10 @@ export function PricePage({ start, forms, countries, plate }: PricePageProps) {
             {own ? <OwnSizes /> : <Dimensions />}
             <HowMany countries={countries} />
           </div>
-          <PricePanel />
+          <div className="price-side">
+            <PricePanel />
+            <PriceAfter />
+          </div>
           <div className="price-table">
             <Lines />
           </div>

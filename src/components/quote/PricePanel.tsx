@@ -26,7 +26,10 @@ export function PricePanel() {
         </button>
       </div>
       {estimate && (
-        <p className="hint mt-3">{estimate.risks[0]} A range is not an offer; a quote is firm until its date.</p>
+        <p className="hint mt-3">
+          The bars show what such pieces come to, every re-pour counted. You pay the quote, whatever the pours do. A
+          range is not an offer; a quote is firm until its date.
+        </p>
       )}
     </section>
   );

@@ -3,7 +3,7 @@ import { Money } from '../ui/Money';
 import { changeText } from './price-start';
 import { usePriceState } from './price-context';
 
-/** Why the price is what it is: what it rests on, what may raise it, what would lower it, how it is paid. */
+/** Why the price is what it is: what it rests on, what would lower it. */
 export function Reasons() {
   const { estimate } = usePriceState();
   if (!estimate) return null;
@@ -13,6 +13,24 @@ export function Reasons() {
         <h2 id="rests-on">What this rests on</h2>
         <Sentences sentences={estimate.assumptions} />
       </section>
+      <section aria-labelledby="cheaper">
+        <h2 id="cheaper">What would make it cheaper</h2>
+        <Levers />
+      </section>
+    </div>
+  );
+}
+
+/** What follows from the price, under its panel: how it is paid, when it is sent, what may raise it. */
+export function PriceAfter() {
+  const { estimate } = usePriceState();
+  if (!estimate) return null;
+  return (
+    <div className="price-after">
+      <section aria-labelledby="paid">
+        <h2 id="paid">How it is paid, and when it is sent</h2>
+        <Payments />
+      </section>
       <section aria-labelledby="risky">
         <h2 id="risky">What makes it risky</h2>
         {estimate.risks.length > 0 ? (
@@ -20,14 +38,6 @@ export function Reasons() {
         ) : (
           <p className="mt-3">Little: we have poured many like it, and nearly all were sound.</p>
         )}
-      </section>
-      <section aria-labelledby="cheaper">
-        <h2 id="cheaper">What would make it cheaper</h2>
-        <Levers />
-      </section>
-      <section aria-labelledby="paid">
-        <h2 id="paid">How it is paid, and when it is sent</h2>
-        <Payments />
       </section>
     </div>
   );
