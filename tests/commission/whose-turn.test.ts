@@ -30,7 +30,7 @@ const deposit = {
   dueAt: days(4),
   state: 'due' as const,
 };
-const pieces = { total: 6, done: 2, nextAct: 'Fettled', scrapped: false };
+const pieces = { total: 6, done: 2, nextWork: 'Fettling', ahead: 3, scrapped: false };
 
 // Who acts in each state follows the table of moves in the studio's own description of the job (T1 to T52).
 describe('whose turn it is', () => {
@@ -48,11 +48,16 @@ describe('whose turn it is', () => {
     ['agreed', { payment: { ...deposit, state: 'on-its-way' } }, 'nobody', /do not pay twice/],
     ['agreed', {}, 'studio', /confirm the first payment/],
     ['booked', {}, 'studio', /place in the year is booked/],
-    ['making', { pieces }, 'studio', /4 of your 6 pieces; next stage: fettled/],
-    ['making', { pieces: { ...pieces, total: 1, done: 0 } }, 'studio', /your piece; next stage: fettled/],
+    ['making', { pieces }, 'studio', /your 6 pieces; next comes fettling, 3 of 6 pieces/],
+    ['making', { pieces: { ...pieces, total: 1, done: 0 } }, 'studio', /your piece; next comes fettling\./],
     ['making', { pieces: { ...pieces, scrapped: true } }, 'studio', /pour again at no charge/],
     ['making', { pieces: { ...pieces, done: 6 } }, 'studio', /through the workshop/],
-    ['making', { pieces: { total: 1, done: 1, nextAct: null, scrapped: false } }, 'studio', /through the workshop/],
+    [
+      'making',
+      { pieces: { total: 1, done: 1, nextWork: null, ahead: 0, scrapped: false } },
+      'studio',
+      /through the workshop/,
+    ],
     ['making', {}, 'studio', /starting/],
     ['making', { pieces, gate: { gate: 'A', state: 'open', at: days(-4) } }, 'customer', /wax or pattern/],
     ['making', { pieces, gate: { gate: 'A', state: 'changes', at: days(-4) } }, 'studio', /asked for changes/],

@@ -27,8 +27,10 @@ export interface TurnFacts {
 export interface TurnPieces {
   total: number;
   done: number;
-  /** Name of the next act on the least advanced piece: "Fettled". */
-  nextAct: string | null;
+  /** The work that comes next on the least advanced piece: "Fettling". */
+  nextWork: string | null;
+  /** How many pieces that work is still ahead of. */
+  ahead: number;
   scrapped: boolean;
 }
 

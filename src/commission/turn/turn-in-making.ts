@@ -1,3 +1,4 @@
+import { withinSentence } from '../sentence';
 import type { TurnFacts, WhoseTurn } from './turn-facts';
 
 const GATE_WORDS: Record<string, string> = {
@@ -50,11 +51,10 @@ function workTurn(facts: TurnFacts, pieces: TurnFacts['pieces']): WhoseTurn {
       'A casting failed and went back into the pot. We pour again at no charge; you need do nothing.',
       'Scrapped, pour again',
     );
-  const piece = pieces.total === 1 ? 'your piece' : `${left} of your ${pieces.total} pieces`;
+  const next = withinSentence(pieces.nextWork ?? 'the work');
+  const count = pieces.total === 1 ? '' : `, ${pieces.ahead} of ${pieces.total} pieces`;
   return studio(
-    `We are working on ${piece}${pieces.nextAct ? `; next stage: ${pieces.nextAct.toLowerCase()}` : ''}. You need do nothing.`,
-    pieces.total === 1
-      ? `Next: ${(pieces.nextAct ?? 'the work').toLowerCase()}`
-      : `Next: ${(pieces.nextAct ?? 'the work').toLowerCase()}, ${left} of ${pieces.total} left`,
+    `We are working on your ${pieces.total === 1 ? 'piece' : `${pieces.total} pieces`}; next comes ${next}${count}. You need do nothing.`,
+    `Next: ${next}${count}`,
   );
 }

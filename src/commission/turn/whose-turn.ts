@@ -1,5 +1,6 @@
 import type { DealState } from '../deal';
 import { formatMoney } from '../money';
+import { withinSentence } from '../sentence';
 import { dayCount, dayInWords, daysBetween, type Turn, type TurnFacts, type WhoseTurn } from './turn-facts';
 import { turnInMaking } from './turn-in-making';
 
@@ -156,9 +157,4 @@ function dueWords(payment: NonNullable<TurnFacts['payment']>, { deal, now }: Tur
   const left = dayCount(daysBetween(now, payment.dueAt));
   const verb = deal === 'agreed' ? 'lapses' : 'due';
   return left === 'today' ? `${payment.label}, ${verb} today` : `${payment.label}, ${verb} in ${left}`;
-}
-
-/** A label as it stands inside a sentence: only its first letter gives way, so that "gate A" stays "gate A". */
-function withinSentence(label: string): string {
-  return label.charAt(0).toLowerCase() + label.slice(1);
 }

@@ -4,6 +4,7 @@ import type { z } from 'zod';
 import type { DealState } from '../../commission/deal';
 import type { Actor } from '../../commission/permissions';
 import { done, refuse, type Outcome } from '../../commission/problem';
+import { withinSentence } from '../../commission/sentence';
 import type { MinutesDone, timerSchema } from '../../commission/making/work-done';
 import { findCommission, lockCommission } from '../commissions';
 import type { Db } from '../db/client';
@@ -62,7 +63,7 @@ export async function logMinutes(
         commissionId: commission.id,
         code: 'minutes',
         actor,
-        sentence: `${input.minutes} min logged on ${input.operation.toLowerCase()}.`,
+        sentence: `${input.minutes} min logged on ${withinSentence(input.operation)}.`,
         at: now,
         data: { minutes: input.minutes, operation: input.operation, clientId: input.clientId },
       });

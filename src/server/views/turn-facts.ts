@@ -1,6 +1,6 @@
 import { and, desc, eq, inArray, isNotNull, isNull, like, max } from 'drizzle-orm';
 import type { Balance } from '../../commission/balance';
-import { PIECE_STAGES, nextStage, STAGE_ACTS } from '../../commission/making/making';
+import { hasReached, PIECE_STAGES, nextStage, STAGE_OPERATIONS } from '../../commission/making/making';
 import { currencySchema } from '../../commission/money';
 import type { TurnFacts, TurnPieces, WhoseTurn } from '../../commission/turn/turn-facts';
 import { whoseTurn } from '../../commission/turn/whose-turn';
@@ -101,7 +101,8 @@ function piecesOf(rows: PieceRow[], results: { pieceId: string | null; result: s
   return {
     total: rows.length,
     done: rows.length - left.length,
-    nextAct: next ? STAGE_ACTS[next] : null,
+    nextWork: next ? STAGE_OPERATIONS[next] : null,
+    ahead: next ? left.filter((piece) => !hasReached(piece.route, piece.stage, next)).length : 0,
     scrapped: lastResult === 'scrapped',
   };
 }
