@@ -49,11 +49,7 @@ async function refresh(): Promise<void> {
 
 if (source) {
   const stream = new EventSource(source);
-  let seen = false;
   stream.addEventListener('news', () => void refresh());
-  // A stream that comes back after a break may have missed something.
-  stream.addEventListener('ready', () => {
-    if (seen) void refresh();
-    seen = true;
-  });
+  // Something may have happened between the page's making and the stream's opening, or while the stream was broken.
+  stream.addEventListener('ready', () => void refresh());
 }
