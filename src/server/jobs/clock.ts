@@ -4,12 +4,13 @@ import { currencySchema } from '../../commission/money';
 import { lockCommission, type CommissionRow } from '../commissions';
 import type { Transaction } from '../db/client';
 import { commissions } from '../db/schema/commissions';
-import { acceptances, checkoutSessions, quotes, stagePayments } from '../db/schema/quotes';
+import { checkoutSessions, quotes, stagePayments } from '../db/schema/quotes';
 import { mails } from '../db/schema/studio';
 import { moveDeal } from '../history';
 import { localDay } from '../mail/letter-words';
 import { readStudioFacts } from '../mail/studio-facts';
 import { queueJob, queueMail } from '../outbox';
+import { standingAcceptance } from '../quote/standing-acceptance';
 import type { Services } from '../services';
 
 /**
@@ -61,7 +62,7 @@ export async function lapseDeposits(services: Services): Promise<number> {
 async function lookAtDeposit(services: Services, tx: Transaction, commissionId: string): Promise<boolean> {
   const at = services.now();
   const commission = await lockCommission(tx, commissionId);
-  const [acceptance] = await tx.select().from(acceptances).where(eq(acceptances.commissionId, commissionId));
+  const acceptance = await standingAcceptance(tx, commissionId);
   if (commission.deal !== 'agreed' || !acceptance) return false;
   const cause = `M13:${acceptance.quoteId}`;
   const [reminder] = await tx.select({ createdAt: mails.createdAt }).from(mails).where(eq(mails.cause, cause));
@@ -128,7 +129,9 @@ async function lapseAgreement(
     data: { quoteId },
     at,
   });
-  return moved.ok;
+  if (!moved.ok) return false;
+  await tx.update(quotes).set({ state: 'lapsed', closedAt: at }).where(eq(quotes.id, quoteId));
+  return true;
 }
 
 async function hasPendingPayment(tx: Transaction, commissionId: string): Promise<boolean> {

@@ -9,6 +9,7 @@ import { findCommission, lockCommission, type CommissionRow } from '../commissio
 import type { Transaction } from '../db/client';
 import { commissions } from '../db/schema/commissions';
 import { acceptances, quotes, stagePayments } from '../db/schema/quotes';
+import { standingAcceptance } from './standing-acceptance';
 import { moveDeal } from '../history';
 import { firstDue } from './promised-days';
 import { bodyOf, isIntact, type QuoteRow } from './quote-body';
@@ -58,7 +59,7 @@ async function alreadyAccepted(
   quote: QuoteRow,
   actor: Actor,
 ): Promise<Outcome<Agreed> | null> {
-  const [row] = await tx.select().from(acceptances).where(eq(acceptances.commissionId, commission.id));
+  const row = await standingAcceptance(tx, commission.id);
   if (!row) return null;
   if (row.quoteId === quote.id && row.acceptedBy === actor!.id)
     return done({ revision: quote.revision, sha256: row.quoteSha256, acceptedAt: row.acceptedAt });

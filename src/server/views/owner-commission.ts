@@ -12,7 +12,6 @@ import type { WhoseTurn } from '../../commission/turn/turn-facts';
 import { findCommission, type CommissionRow } from '../commissions';
 import type { Db } from '../db/client';
 import { commissions } from '../db/schema/commissions';
-import { acceptances } from '../db/schema/quotes';
 import { mails } from '../db/schema/studio';
 import { factsOf, readUploads, type UploadRow } from '../enquiry/enquiry-mails';
 import { readBalance } from '../money/ledger';
@@ -21,11 +20,13 @@ import { MAIL_WORDS } from '../mail/mail-log';
 import { readMessages, type MessageView } from '../enquiry/messages';
 import { readAttempts, readPieces, type AttemptRow, type PieceRow } from '../making/pieces';
 import { isIntact } from '../quote/quote-body';
+import { standingAcceptance } from '../quote/standing-acceptance';
 import { readQuotes } from '../quote/quote-view';
 import { readQuestions, type QuestionRow } from '../enquiry/questions';
 import { readRights } from '../enquiry/rights';
 import type { Services } from '../services';
 import { readHistory, type HistoryLine } from './history';
+import { marginOf, type OpenMargin } from './margin-now';
 import { turnOf } from './turn-facts';
 
 /** A revision in the owner's list. */
@@ -66,6 +67,7 @@ export interface OwnerCommission {
   revisions: RevisionLine[];
   accepted: { typedName: string; at: Date; address: string } | null;
   balance: Balance;
+  margin: OpenMargin | null;
   messages: MessageView[];
   history: HistoryLine[];
   pieces: PieceRow[];
@@ -105,6 +107,7 @@ export async function readOwnerCommission(
     revisions: await revisionLines(db, row.id),
     accepted: await acceptanceOf(db, row.id),
     balance: await readBalance(db, row.id, now),
+    margin: await marginOf(db, row, now),
     messages: await readMessages(db, row.id),
     history: await readHistory(db, row.id, 'studio'),
     pieces: await readPieces(db, row.id),
@@ -122,7 +125,7 @@ async function revisionLines(db: Db, id: string): Promise<RevisionLine[]> {
 }
 
 async function acceptanceOf(db: Db, id: string): Promise<OwnerCommission['accepted']> {
-  const [row] = await db.select().from(acceptances).where(eq(acceptances.commissionId, id));
+  const row = await standingAcceptance(db, id);
   return row ? { typedName: row.typedName, at: row.acceptedAt, address: row.address } : null;
 }
 

@@ -39,14 +39,13 @@ export const quotes = pgTable(
   (t) => [unique('quotes_revision').on(t.commissionId, t.revision)],
 );
 
-/** Evidence of an acceptance (T11). One per commission at most. */
+/** Evidence of an acceptance (T11): one per revision. A commission has one that stands, the one of its accepted quote. */
 export const acceptances = pgTable('acceptances', {
   quoteId: uuid('quote_id')
     .primaryKey()
     .references(() => quotes.id),
   commissionId: uuid('commission_id')
     .notNull()
-    .unique()
     .references(() => commissions.id),
   quoteSha256: text('quote_sha256').notNull(),
   termsVersion: text('terms_version').notNull(),
