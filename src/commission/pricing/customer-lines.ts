@@ -15,9 +15,9 @@ const minutesOf = (lines: readonly CostLine[], pieces: number) =>
 
 const METAL_IDS = new Set(['melt-loss', 'gating', 'metal']);
 
-function metalWords({ massesG, metal }: QuoteDraft): string {
+function metalWords({ massesG, metal, pieces }: QuoteDraft): string {
   const of = (massG: number) => `${massG.toLocaleString('en-GB')} g`;
-  return `${metal.name}: ${of(massesG.poured)} poured for ${of(massesG.finished)} finished`;
+  return `${metal.name}: ${of(massesG.poured)} poured for ${of(massesG.finished)} finished${pieces > 1 ? ', each' : ''}`;
 }
 
 /** One row per kind of work, weighted by its expected cost. */

@@ -20,11 +20,11 @@ export function Dimensions() {
 }
 
 /** What the finished piece weighs and what is poured for it. */
-export function FinishedMass() {
+export function FinishedMass({ label = 'Finished mass' }: { label?: string }) {
   const { estimate } = usePriceState();
   return (
     <div className="dimension">
-      <p className="label">Finished mass</p>
+      <p className="label">{label}</p>
       {estimate ? (
         <>
           <p className="dimension-figure">{massWords(estimate.massesG.finished, 'metric')}</p>

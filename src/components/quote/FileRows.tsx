@@ -1,4 +1,4 @@
-import { measureWords } from '../../casting/measure-words';
+import { measureWords, otherUnits } from '../../casting/measure-words';
 import type { FileDropProps } from './FileDrop';
 import { sizeWords, type Upload } from './uploads';
 
@@ -12,7 +12,6 @@ interface ArrivedFileProps extends Pick<FileDropProps, 'alloy' | 'onMeasure'> {
 /** A file in the studio's keeping, with its small picture or its measure in words. */
 export function ArrivedFile({ file, alloy, onMeasure, onRemove }: ArrivedFileProps) {
   const { measure } = file;
-  const volume = measure?.volumeMm3 ?? null;
   return (
     <li className="sent-file">
       {file.thumb ? <img src={file.thumb} alt="" width="72" height="72" loading="lazy" /> : <span aria-hidden="true" />}
@@ -28,25 +27,41 @@ export function ArrivedFile({ file, alloy, onMeasure, onRemove }: ArrivedFilePro
             ))}
           </ul>
         )}
-        {measure && volume !== null && onMeasure && (
-          <button
-            type="button"
-            className="button button-quiet mt-2"
-            onClick={() =>
-              onMeasure({
-                volumeMm3: Math.round(volume),
-                longestMm: Math.round(Math.max(...measure.boxMm) * 10) / 10,
-              })
-            }
-          >
-            Price it by this measure
-          </button>
-        )}
+        {measure && onMeasure && <PriceByMeasure measure={measure} onMeasure={onMeasure} />}
       </div>
       <button type="button" className="button-text" onClick={onRemove} aria-label={`Remove ${file.name}`}>
         Remove
       </button>
     </li>
+  );
+}
+
+type PriceByMeasureProps = Required<Pick<FileDropProps, 'onMeasure'>> & { measure: NonNullable<Upload['measure']> };
+
+/** Takes a closed file's volume and longest side into the price, in the unit it was drawn in. */
+function PriceByMeasure({ measure, onMeasure }: PriceByMeasureProps) {
+  const { volumeMm3, boxMm } = measure;
+  if (volumeMm3 === null) return null;
+  const take = (factor: number) =>
+    onMeasure({
+      volumeMm3: Math.round(volumeMm3 * factor ** 3),
+      longestMm: Math.round(Math.max(...boxMm) * factor * 10) / 10,
+    });
+  const units = otherUnits(boxMm);
+  return (
+    <>
+      {units.length > 0 && <p className="hint mt-2">A 3D file does not say its unit. Which was it drawn in?</p>}
+      <div className="mt-2 flex flex-wrap gap-2">
+        {units.map(({ unit, factor, boxMm: sides }) => (
+          <button key={unit} type="button" className="button button-quiet" onClick={() => take(factor)}>
+            In {unit}: {sides.join(' × ')} mm
+          </button>
+        ))}
+        <button type="button" className="button button-quiet" onClick={() => take(1)}>
+          {units.length > 0 ? 'In millimetres, as read' : 'Price it by this measure'}
+        </button>
+      </div>
+    </>
   );
 }
 

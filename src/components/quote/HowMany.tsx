@@ -49,7 +49,7 @@ export function HowMany({ countries }: { countries: readonly Choice[] }) {
         registration={register('buyer')}
       />
       <Field
-        label="Finishing, if not our usual"
+        label="Finishing of each, if not our usual"
         name="finishHours"
         unit="hours"
         inputMode="decimal"

@@ -36,9 +36,10 @@ export function OwnPiece() {
         <FileDrop
           id="price-files"
           alloy={alloy}
-          onMeasure={({ volumeMm3, longestMm }) =>
-            set({ volumeMm3: String(volumeMm3), longestMm: String(longestMm), massG: '' })
-          }
+          onMeasure={({ volumeMm3, longestMm }) => {
+            set({ volumeMm3: String(volumeMm3), longestMm: String(longestMm), massG: '' });
+            document.querySelector<HTMLInputElement>('[name="thinnestMm"]')?.focus();
+          }}
         />
       </div>
     </div>
@@ -87,7 +88,7 @@ export function OwnSizes() {
           It is a blade or has an edge
         </Checkbox>
       </div>
-      <FinishedMass />
+      <FinishedMass label="What we reckon with" />
     </div>
   );
 }

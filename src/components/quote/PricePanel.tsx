@@ -60,7 +60,7 @@ function Figures({ estimate }: { estimate: Estimate }) {
           caption="What pieces like this come to"
           meant={{ from: 0, to: shown(likelyMinor.p80) }}
           low={first && words(first.from)}
-          middle={`4 in 5 pieces like this: up to ${words(shown(likelyMinor.p80))}`}
+          middle={`4 in 5 ${pieces > 1 ? 'such sets' : 'pieces like this'}: up to ${words(shown(likelyMinor.p80))}`}
           high={last && words(last.to)}
         />
       </div>
