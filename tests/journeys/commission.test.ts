@@ -53,7 +53,7 @@ afterAll(async () => {
 
 /** Waits until the window that was never reloaded shows this. */
 async function seesLive(words: string | RegExp): Promise<void> {
-  await watching.locator('main').getByText(words).first().waitFor();
+  await watching.locator('main').getByText(words).filter({ visible: true }).first().waitFor();
   expect(await watching.evaluate(() => document.documentElement.dataset['opened'])).toBe('once');
 }
 

@@ -143,20 +143,20 @@ describe('a customer without a mouse', () => {
   });
 
   it('is trapped nowhere: the tab key leads through each page and out of it', async () => {
-    const signedOut = await (await openContext(browser, { who: 'guest', viewport: DESK })).newPage();
+    const guest = await openContext(browser, { who: 'guest', viewport: DESK });
     for (const path of ['/', '/forms', '/price', '/price/enquire?what=form&form=palstave', '/sign-in']) {
+      const signedOut = await guest.newPage();
       await signedOut.goto(path);
       await signedOut.waitForLoadState('networkidle');
-      const left = await signedOut.evaluate(() => {
-        document.documentElement.dataset['tabbed'] = '';
-        return document.querySelectorAll('a[href], button, input, select, textarea, summary').length;
-      });
+      const stops = 'a[href], button, input, select, textarea, summary, [tabindex="0"]';
+      const left = await signedOut.locator(stops).count();
       let out = false;
       for (let presses = 0; presses < left + 5 && !out; presses += 1) {
         await signedOut.keyboard.press('Tab');
         out = await signedOut.evaluate(() => document.activeElement === document.body || !document.hasFocus());
       }
       expect(out, `the tab key never leaves ${path}`).toBe(true);
+      await signedOut.close();
     }
   });
 });
