@@ -7,7 +7,7 @@ import { BROWSER_COOKIE, browserIdFrom } from './server/auth/browser-id';
 import { guard, isCanonicalPath } from './server/auth/guards';
 import { safeNext } from './server/auth/next-path';
 import { readSession } from './server/auth/session';
-import { answer, json, jsonProblem, readInput, wantsJson } from './server/door';
+import { answer, FROM_ELSEWHERE, isFromElsewhere, json, jsonProblem, readInput, wantsJson } from './server/door';
 import { NotedFault, noteFault } from './server/faults';
 import { sharedServices, type Services } from './server/services';
 import { signInPath } from './server/turn-away';
@@ -25,6 +25,9 @@ export const onRequest = defineMiddleware(async (context, next) => {
   if (!isCanonicalPath(context.request.url)) {
     return new Response('The address is not spelled the way this site spells it.\n', { status: 400 });
   }
+  if (changesThings(context.request) && isFromElsewhere(context.request, context.url)) {
+    return jsonProblem(FROM_ELSEWHERE.problem);
+  }
   context.locals.services = services;
   context.locals.browserId = keepBrowserId(context, services);
   try {
@@ -37,6 +40,11 @@ export const onRequest = defineMiddleware(async (context, next) => {
     return json({ ok: false, problem: brokenProblem(fault) }, 500);
   }
 });
+
+/** Astro's own check looks at forms alone; this one at every request that may change something, whatever its type. */
+function changesThings({ method }: Request): boolean {
+  return !['GET', 'HEAD', 'OPTIONS'].includes(method);
+}
 
 function keepBrowserId({ cookies, locals }: APIContext, { config }: Services): string {
   if (locals.browserId) return locals.browserId;

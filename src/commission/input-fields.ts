@@ -51,11 +51,17 @@ export function textLines(mostLines: number, mostCharacters: number, message: st
   );
 }
 
+/** A name with more parts than any field of ours has is left out. */
+const MOST_PARTS = 6;
+
 /** Turns `{ 'lines.0.hours': '3' }`, as a plain form sends it, into `{ lines: [{ hours: '3' }] }`; nested input stays. */
 export function unflatten(input: unknown): unknown {
   if (typeof input !== 'object' || input === null || Array.isArray(input)) return input;
   const result: Record<string, unknown> = {};
-  for (const [name, value] of Object.entries(input)) place(result, name.split('.'), value);
+  for (const [name, value] of Object.entries(input)) {
+    const parts = name.split('.', MOST_PARTS + 1);
+    if (parts.length <= MOST_PARTS) place(result, parts, value);
+  }
   return listsOf(result);
 }
 

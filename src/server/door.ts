@@ -5,6 +5,7 @@ import type { Actor } from '../commission/permissions';
 import { done, refuse, type Outcome, type Problem, type ProblemCode } from '../commission/problem';
 import { problemFrom } from '../commission/problem-from';
 import { formReturns } from './db/schema/people';
+import { flawOf } from './flaws';
 import type { Services } from './services';
 
 /** What a door is given; Astro's own context fits. */
@@ -37,10 +38,19 @@ export function wantsJson(request: Request): boolean {
   );
 }
 
+/** What a request from another site is told. */
+export const FROM_ELSEWHERE = refuse('not-allowed', 'This request came from another site and was not carried out.');
+
 /**
- * Reads a body (JSON, or a form whose repeated names become lists) and checks it against `schema`.
- * JSON from another origin is refused; forms are guarded by Astro's own origin check.
+ * True when a browser says that another site's page sent this. A request without an Origin is not from a browser's
+ * page: every browser names it with each POST.
  */
+export function isFromElsewhere(request: Request, url: URL): boolean {
+  const origin = request.headers.get('origin');
+  return (origin !== null && origin !== url.origin) || request.headers.get('sec-fetch-site') === 'cross-site';
+}
+
+/** Reads a body (JSON, or a form whose repeated names become lists) and checks it against `schema`. */
 export async function readInput<S extends z.ZodType>(context: DoorContext, schema: S): Promise<Outcome<z.output<S>>> {
   const raw = await readRaw(context);
   if (!raw.ok) return raw;
@@ -53,9 +63,7 @@ async function readRaw({ request, url }: DoorContext): Promise<Outcome<Record<st
   const known = READ_TWICE.get(request);
   if (known) return done(known);
   const type = request.headers.get('content-type') ?? '';
-  const origin = request.headers.get('origin');
-  if (origin && origin !== url.origin)
-    return refuse('not-allowed', 'This request came from another site and was not carried out.');
+  if (isFromElsewhere(request, url)) return FROM_ELSEWHERE;
   try {
     const value = type.startsWith('application/json')
       ? ((await request.json()) as unknown)
@@ -63,11 +71,8 @@ async function readRaw({ request, url }: DoorContext): Promise<Outcome<Record<st
     if (typeof value !== 'object' || value === null || Array.isArray(value)) {
       return refuse('invalid', 'The request must be one object of named values.');
     }
-    if (!isStorable(value))
-      return refuse(
-        'invalid',
-        'The text holds a character that no text may hold. Type it again instead of pasting it.',
-      );
+    const flaw = flawOf(value);
+    if (flaw) return refuse('invalid', flaw);
     READ_TWICE.set(request, value as Record<string, unknown>);
     return done(value as Record<string, unknown>);
   } catch {
@@ -75,26 +80,24 @@ async function readRaw({ request, url }: DoorContext): Promise<Outcome<Record<st
   }
 }
 
-/** False for text that PostgreSQL cannot keep: a zero character, or half of a surrogate pair. */
-function isStorable(value: unknown): boolean {
-  if (typeof value === 'string') return !value.includes('\0') && !/\p{Cs}/u.test(value);
-  if (typeof value !== 'object' || value === null) return true;
-  return Object.entries(value).every(([name, item]) => isStorable(name) && isStorable(item));
-}
-
 /** Keeps the text of a body that was read elsewhere (one with a file in it), so that a refusal gives it back. */
 export function rememberTyped(request: Request, values: Record<string, string>): void {
   READ_TWICE.set(request, values);
 }
 
+/** Of a repeated name the last value counts, unless the name ends in `[]`: then all of them, in order. */
 function fromForm(form: FormData): Record<string, unknown> {
-  const values: Record<string, unknown> = {};
-  for (const name of new Set(form.keys())) {
-    const all = form.getAll(name).filter((value): value is string => typeof value === 'string');
-    values[name] = name.endsWith('[]') ? all : (all.at(-1) ?? '');
-    if (name.endsWith('[]')) values[name.slice(0, -2)] = all;
+  const values = new Map<string, string | string[]>();
+  for (const [name, value] of form) {
+    const text = typeof value === 'string' ? value : '';
+    const isList = name.endsWith('[]');
+    const list = values.get(name);
+    if (!isList) values.set(name, text);
+    else if (Array.isArray(list)) list.push(text);
+    else values.set(name, [text]);
   }
-  return values;
+  for (const [name, list] of [...values]) if (name.endsWith('[]')) values.set(name.slice(0, -2), list);
+  return Object.fromEntries(values);
 }
 
 /** Where an answer leads a plain form: on success, and back after a refusal. */
@@ -141,14 +144,16 @@ export function jsonProblem(problem: Problem): Response {
   return json({ ok: false, problem }, STATUS[problem.code]);
 }
 
+const MOST_KEPT = 200_000;
+
 async function keepTyped({ request, locals }: DoorContext, problem: Problem): Promise<string> {
   const { services, browserId } = locals;
   const typed = READ_TWICE.get(request) ?? {};
-  const values = Object.fromEntries(
-    Object.entries(typed).filter(
-      (entry): entry is [string, string | string[]] => typeof entry[1] === 'string' || Array.isArray(entry[1]),
-    ),
+  const texts = Object.entries(typed).filter(
+    (entry): entry is [string, string | string[]] => typeof entry[1] === 'string' || Array.isArray(entry[1]),
   );
+  // No form of ours comes near this; what is larger was never typed.
+  const values = JSON.stringify(texts).length > MOST_KEPT ? {} : Object.fromEntries(texts);
   const id = uuidv7();
   const expiresAt = new Date(services.now().getTime() + 60 * 60_000);
   await services.db.insert(formReturns).values({ id, browserId, values, problem, expiresAt });

@@ -152,11 +152,17 @@ function markEmpty(input: unknown): unknown {
   return { ...input, questions };
 }
 
+/** Five questions are open at once; over all rounds there are never so many. */
+const MOST_ANSWERS = 100;
+
 /** Answers by the question's id; an empty one is simply not given yet. `send` asks for T3. */
 export const answersSchema = z.preprocess(
   unflatten,
   z.object({
-    answers: z.record(z.uuid(), z.string().trim().max(4000, 'Keep an answer under 4,000 characters.')).default({}),
+    answers: z
+      .record(z.uuid(), z.string().trim().max(4000, 'Keep an answer under 4,000 characters.'))
+      .refine((answers) => Object.keys(answers).length <= MOST_ANSWERS, 'These are more answers than we asked for.')
+      .default({}),
     send: z.preprocess((value) => value === true || value === 'send' || value === 'true', z.boolean()).default(false),
   }),
 );

@@ -2,6 +2,7 @@ import { Readable } from 'node:stream';
 import type { ReadableStream as NodeWebStream } from 'node:stream/web';
 import { Busboy, type BusboyFileStream, type BusboyHeaders, type BusboyInstance } from '@fastify/busboy';
 import { done, refuse, type Outcome } from '../../commission/problem';
+import { flawOf } from '../flaws';
 import { discard, receive, type Received } from './disk';
 
 /** A multipart body taken apart: small text fields, and one file already on disk. */
@@ -41,6 +42,11 @@ export async function readMultipart(request: Request, folder: string, limit: Fil
   if (!whole) return refuse('invalid', 'The file did not arrive whole. Send it again.');
   const { fields, arrival } = parts;
   const file = (await arrival?.received) ?? null;
+  const flaw = flawOf(fields);
+  if (flaw) {
+    await discard(folder, file?.key);
+    return refuse('invalid', flaw);
+  }
   if (!file || !arrival?.stream.truncated) return done({ fields, file });
   await discard(folder, file.key);
   return refuse(
