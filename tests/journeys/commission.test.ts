@@ -57,6 +57,16 @@ async function seesLive(words: string | RegExp): Promise<void> {
   expect(await watching.evaluate(() => document.documentElement.dataset['opened'])).toBe('once');
 }
 
+/** Waits until the runner of that window shows a stage as done, or as the one in hand. */
+async function seesStage(name: string, state: 'done' | 'now'): Promise<void> {
+  await watching
+    .locator('main li')
+    .filter({ hasText: `${name}, ${state}` })
+    .first()
+    .waitFor();
+  expect(await watching.evaluate(() => document.documentElement.dataset['opened'])).toBe('once');
+}
+
 const photo = (name: string) => benchPhoto(`${name}.jpg`, name === 'pattern' ? '#b9a27a' : '#b07a3c');
 const pageOf = () => `/commissions/${ref}`;
 
@@ -177,7 +187,7 @@ describe('a commission from a wish to a piece on its way', () => {
   it('is poured, scrapped for a misrun and poured again, seen without a reload', async () => {
     await bench.goto(`/bench/${ref}`);
     await maker.reach(bench, 'Mould ready');
-    await seesLive(/Mould ready/);
+    await seesStage('Mould', 'done');
     await maker.reach(bench, 'Poured');
     await maker.sendPhoto(bench, await photo('misrun'), 'The tip did not fill');
     await seesLive('The tip did not fill');
@@ -190,6 +200,7 @@ describe('a commission from a wish to a piece on its way', () => {
     await maker.reach(bench, 'Mould ready');
     await maker.reach(bench, 'Poured');
     await maker.reach(bench, 'Sound');
+    await seesStage('Pour', 'done');
     await maker.sendPhoto(bench, await photo('sound'), 'Sound, gates cut off');
     await seesLive('Sound, gates cut off');
     await shoot(watching, '21-sound-live');
@@ -215,6 +226,8 @@ describe('a commission from a wish to a piece on its way', () => {
   it('leaves once its balance is paid, with an adult’s signature, and arrives', async () => {
     await collector.payDue(phone, ref);
     await mailOf(COLLECTOR.email, 'M12', 3);
+    await collector.giveAddress(phone, ref);
+    await seesLive('3 Withy Lane');
     await bench.goto(`/bench/${ref}`);
     await maker.reach(bench, 'Packed');
     await owner.dispatch(desk, ref);

@@ -58,3 +58,13 @@ export async function acceptRefused(page: Page, { name }: Collector): Promise<vo
   await page.getByRole('button', { name: 'Accept and go to payment' }).click();
   await page.getByText(/Revision 1 was withdrawn/).waitFor();
 }
+
+/** Says where the parcel goes. */
+export async function giveAddress(page: Page, ref: string): Promise<void> {
+  await page.goto(`/commissions/${ref}`);
+  await page.getByText('Give the address', { exact: true }).click();
+  await page.getByLabel('Name, street, place, postcode').fill('Sabine Ferrowick\n3 Withy Lane\nOverlenn\nLE1 2NN');
+  await page.getByLabel('Telephone, for the carrier').fill('+44 1632 960199');
+  await page.getByRole('button', { name: 'Keep this address' }).click();
+  await page.getByText('Change the address', { exact: true }).waitFor();
+}
