@@ -30,7 +30,7 @@ const deposit = {
   dueAt: days(4),
   state: 'due' as const,
 };
-const pieces = { total: 6, done: 2, nextWork: 'Fettling', ahead: 3, scrapped: false };
+const pieces = { total: 6, done: 2, nextWork: 'Fettling', ahead: 3, scrapped: false, since: days(-1) };
 
 // Who acts in each state follows the table of moves in the studio's own description of the job (T1 to T52).
 describe('whose turn it is', () => {
@@ -54,7 +54,7 @@ describe('whose turn it is', () => {
     ['making', { pieces: { ...pieces, done: 6 } }, 'studio', /through the workshop/],
     [
       'making',
-      { pieces: { total: 1, done: 1, nextWork: null, ahead: 0, scrapped: false } },
+      { pieces: { total: 1, done: 1, nextWork: null, ahead: 0, scrapped: false, since: days(-1) } },
       'studio',
       /through the workshop/,
     ],
@@ -94,6 +94,7 @@ describe('whose turn it is', () => {
     expect(whoseTurn(facts('making', { gate: { gate: 'A', state: 'open', at: days(-4) } })).since).toEqual(days(-4));
     const overdue = { ...deposit, state: 'overdue' as const, dueAt: days(-9) };
     expect(whoseTurn(facts('finished', { payment: overdue })).since).toEqual(days(-9));
+    expect(whoseTurn(facts('making', { pieces })).since).toEqual(days(-1));
     expect(whoseTurn(facts('enquiry')).since).toEqual(days(-2));
   });
 
@@ -111,6 +112,7 @@ describe('the list by turn', () => {
       ref,
       deal,
       turn: whoseTurn(facts(deal, { since: days(since), ...more })),
+      messageAt: null,
     });
     const lists = listByTurn([
       row('a', 'enquiry', -1),

@@ -16,6 +16,7 @@ import { readMoney, type MoneyPage } from '../../src/server/money/money-view';
 import { bodyOf, isIntact, termsSha256 } from '../../src/server/quote/quote-body';
 import { currentRateCard } from '../../src/server/pricing/rates';
 import type { Services } from '../../src/server/services';
+import { readMargins } from '../../src/server/views/margin-now';
 import { pathOf } from '../../src/server/storage/disk';
 import { CURRENT_TERMS } from '../../src/commission/terms';
 import { createTestServices } from '../setup/database';
@@ -216,6 +217,24 @@ describe('the sword whose pour failed', () => {
     expect((priced.expectedMargin * 100).toFixed(2)).toBe('20.02');
     const now = expectedMargin(priced.workMinor, committedMinor(priced.sums, progress), toFinish);
     expect((now * 100).toFixed(2)).toBe('7.90');
+  });
+
+  it('tells an owner so, with 259.01 received beyond what is committed, and nobody else', async () => {
+    const actor = async (role: 'owner' | 'bookkeeper' | 'maker') => {
+      const [person] = await services.db.select().from(users).where(eq(users.role, role));
+      return { id: person!.id, role, email: person!.email, name: person!.name };
+    };
+    const all = await readMargins(services, await actor('owner'));
+    if (!all.ok) throw new Error(all.problem.message);
+    const sword = all.value.get('MF-0181')!;
+    expect([sword.quoted, sword.now].map((share) => (share * 100).toFixed(2))).toEqual(['20.02', '7.90']);
+    expect(sword).toMatchObject({ committedMinor: 74_599, receivedNetMinor: 100_500, exposureMinor: 25_901 });
+    expect(sword.beforeFettling).toBe(true);
+    // Nothing that has not been poured has moved, and what is over is not in the list.
+    expect(all.value.get('MF-0184')!.now).toBeCloseTo(all.value.get('MF-0184')!.quoted, 12);
+    expect(['MF-0171', 'MF-0177', 'MF-0180', 'MF-0185'].filter((ref) => all.value.has(ref))).toEqual([]);
+    for (const role of ['bookkeeper', 'maker'] as const)
+      expect(await readMargins(services, await actor(role))).toMatchObject({ problem: { code: 'not-allowed' } });
   });
 });
 

@@ -31,6 +31,8 @@ export interface TurnPieces {
   nextWork: string | null;
   /** How many pieces that work is still ahead of. */
   ahead: number;
+  /** Since when the least advanced piece waits for that work. */
+  since: Date;
   scrapped: boolean;
 }
 

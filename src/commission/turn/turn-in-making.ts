@@ -34,7 +34,7 @@ function workTurn(facts: TurnFacts, pieces: TurnFacts['pieces']): WhoseTurn {
     who: 'studio',
     sentence,
     studioSentence,
-    since: facts.since,
+    since: pieces?.since ?? facts.since,
   });
   if (!pieces || pieces.total === 0)
     return studio('We are starting on your piece. You need do nothing.', 'Making, no piece laid out yet');

@@ -5,6 +5,13 @@ import type { WhoseTurn } from './turn-facts';
 export interface TurnRow {
   deal: DealState;
   turn: WhoseTurn;
+  /** When the customer wrote the message that has no answer yet. */
+  messageAt: Date | null;
+}
+
+/** Since when the studio waits or is waited for: a message that came in the customer's own turn counts from its arrival. */
+export function waitingSince({ turn, messageAt }: Pick<TurnRow, 'turn' | 'messageAt'>): Date {
+  return messageAt && turn.who !== 'studio' ? messageAt : turn.since;
 }
 
 /** The studio's list: who is waited for, oldest first within each. */
@@ -16,11 +23,13 @@ export interface ListByTurn<T extends TurnRow> {
   nobody: T[];
 }
 
-/** Sorts commissions by who must act; held ones stand apart, since a date and nobody's act ends them. */
+/**
+ * Sorts commissions by who must act; held ones stand apart, since a date and nobody's act ends them. A message without an
+ * answer is the studio's to answer, whoever's turn it is otherwise.
+ */
 export function listByTurn<T extends TurnRow>(rows: readonly T[]): ListByTurn<T> {
-  const oldestFirst = [...rows].sort((a, b) => a.turn.since.getTime() - b.turn.since.getTime());
-  const of = (wanted: keyof ListByTurn<T>) =>
-    oldestFirst.filter((row) => (row.deal === 'held' ? 'held' : row.turn.who) === wanted);
+  const oldestFirst = [...rows].sort((a, b) => waitingSince(a).getTime() - waitingSince(b).getTime());
+  const of = (wanted: keyof ListByTurn<T>) => oldestFirst.filter((row) => placeOf(row) === wanted);
   return {
     studio: of('studio'),
     customer: of('customer'),
@@ -28,4 +37,9 @@ export function listByTurn<T extends TurnRow>(rows: readonly T[]): ListByTurn<T>
     held: of('held'),
     nobody: of('nobody'),
   };
+}
+
+function placeOf({ deal, turn, messageAt }: TurnRow): keyof ListByTurn<TurnRow> {
+  if (messageAt) return 'studio';
+  return deal === 'held' ? 'held' : turn.who;
 }

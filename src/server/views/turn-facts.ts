@@ -62,17 +62,20 @@ function factsFor(row: CommissionRow, known: Loaded, now: Date): TurnFacts {
   const own = <T extends { id: string }>(list: T[]) => list.filter((item) => item.id === row.id);
   const asked = own(known.open);
   const live = own(known.live)[0];
+  const since = own(known.moves).find((move) => move.to === row.deal)?.at ?? row.createdAt;
+  const gatesOf = known.openGates.filter((gate) => gate.commissionId === row.id);
   return {
     deal: row.deal,
-    since: own(known.moves).find((move) => move.to === row.deal)?.at ?? row.createdAt,
+    since,
     now,
     questions: asked[0] ? { open: asked.length, askedAt: asked[0].askedAt } : null,
     quote: live ? { revision: live.revision, sentAt: live.sentAt, validUntil: live.until } : null,
     payment: nextPayment(known.balances.get(row.id)),
-    gate: gateOf(known.openGates.filter((gate) => gate.commissionId === row.id)),
+    gate: gateOf(gatesOf),
     pieces: piecesOf(
       known.allPieces.filter((piece) => piece.commissionId === row.id),
       own(known.results),
+      latest([since, ...gatesOf.map((gate) => gate.decidedAt)]),
     ),
     heldUntil: row.heldUntil,
   };
@@ -91,7 +94,15 @@ function gateOf(rows: (typeof gates.$inferSelect)[]): TurnFacts['gate'] {
   return { gate: last.gate, state: last.state, at: last.decidedAt ?? last.openedAt };
 }
 
-function piecesOf(rows: PieceRow[], results: { pieceId: string | null; result: string | null }[]): TurnPieces | null {
+function latest(instants: (Date | null)[]): Date {
+  return new Date(Math.max(...instants.map((instant) => instant?.getTime() ?? 0)));
+}
+
+function piecesOf(
+  rows: PieceRow[],
+  results: { pieceId: string | null; result: string | null }[],
+  free: Date,
+): TurnPieces | null {
   if (rows.length === 0) return null;
   const isDone = (piece: PieceRow) => nextStage(piece.route, piece.stage) === null;
   const left = rows.filter((piece) => !isDone(piece));
@@ -104,5 +115,6 @@ function piecesOf(rows: PieceRow[], results: { pieceId: string | null; result: s
     nextWork: next ? STAGE_OPERATIONS[next] : null,
     ahead: next ? left.filter((piece) => !hasReached(piece.route, piece.stage, next)).length : 0,
     scrapped: lastResult === 'scrapped',
+    since: latest([free, ...(least ? [least.updatedAt] : rows.map((piece) => piece.updatedAt))]),
   };
 }

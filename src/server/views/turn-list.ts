@@ -3,7 +3,7 @@ import { DEAL_WORDS, type DealState } from '../../commission/deal';
 import { may, type Actor } from '../../commission/permissions';
 import { done, refuse, type Outcome } from '../../commission/problem';
 import { daysBetween, type WhoseTurn } from '../../commission/turn/turn-facts';
-import { listByTurn, type ListByTurn } from '../../commission/turn/turn-list';
+import { listByTurn, waitingSince, type ListByTurn } from '../../commission/turn/turn-list';
 import { commissions, messages } from '../db/schema/commissions';
 import type { Services } from '../services';
 import { turnsOf } from './turn-facts';
@@ -23,8 +23,8 @@ export interface TurnLine {
   turn: WhoseTurn;
   /** Whole days the one whose turn it is has been waited for. */
   days: number;
-  /** The customer's last message has no answer yet. */
-  unanswered: boolean;
+  /** When the customer wrote their last message, while it has no answer yet. */
+  messageAt: Date | null;
 }
 
 /** The studio's page of whose turn it is: confirmed commissions that are open or ended lately. */
@@ -36,7 +36,7 @@ export async function readTurnList(services: Services, actor: Actor): Promise<Ou
 export async function readEnquiries(services: Services, actor: Actor): Promise<Outcome<TurnLine[]>> {
   const before: DealState[] = ['enquiry', 'asking', 'estimated', 'quoted', 'lapsed', 'declined'];
   return withLines(services, actor, before, (lines) =>
-    lines.sort((a, b) => a.turn.since.getTime() - b.turn.since.getTime()),
+    lines.sort((a, b) => waitingSince(a).getTime() - waitingSince(b).getTime()),
   );
 }
 
@@ -61,7 +61,7 @@ async function withLines<T>(
       ),
     );
   const turns = await turnsOf(services.db, rows, now);
-  const waiting = await unansweredIds(
+  const waiting = await unanswered(
     services,
     rows.map((row) => row.id),
   );
@@ -69,6 +69,7 @@ async function withLines<T>(
     arrange(
       rows.map((row) => {
         const turn = turns.get(row.id)!;
+        const messageAt = waiting.get(row.id) ?? null;
         return {
           ref: row.ref,
           title: row.title,
@@ -76,20 +77,25 @@ async function withLines<T>(
           deal: row.deal,
           dealWords: DEAL_WORDS[row.deal],
           turn,
-          days: daysBetween(turn.since, now),
-          unanswered: waiting.has(row.id),
+          days: daysBetween(waitingSince({ turn, messageAt }), now),
+          messageAt,
         };
       }),
     ),
   );
 }
 
-async function unansweredIds({ db }: Services, ids: string[]): Promise<Set<string>> {
-  if (ids.length === 0) return new Set();
+/** When each commission's last message was written, where it is the customer's. */
+async function unanswered({ db }: Services, ids: string[]): Promise<Map<string, Date>> {
+  if (ids.length === 0) return new Map();
   const last = await db
-    .selectDistinctOn([messages.commissionId], { id: messages.commissionId, role: messages.authorRole })
+    .selectDistinctOn([messages.commissionId], {
+      id: messages.commissionId,
+      role: messages.authorRole,
+      at: messages.at,
+    })
     .from(messages)
     .where(inArray(messages.commissionId, ids))
     .orderBy(messages.commissionId, desc(messages.at), desc(messages.id));
-  return new Set(last.filter((row) => row.role === 'customer').map((row) => row.id));
+  return new Map(last.filter((row) => row.role === 'customer').map((row) => [row.id, row.at]));
 }

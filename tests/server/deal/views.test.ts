@@ -39,13 +39,22 @@ describe('the studio’s list', () => {
     setting.clock.now = START;
     if (!lists.ok) throw new Error(lists.problem.message);
     const short = (list: typeof lists.value.studio) =>
-      list.map((line) => [line.ref, line.turn.studioSentence, line.days, line.unanswered]);
-    expect(short(lists.value.studio)).toEqual([[refs.waiting, 'Enquiry to answer', 2, false]]);
-    expect(short(lists.value.customer)).toEqual([
+      list.map((line) => [line.ref, line.turn.studioSentence, line.days, line.messageAt !== null]);
+    expect(short(lists.value.studio)).toEqual([
+      [refs.waiting, 'Enquiry to answer', 2, false],
       [refs.quoted, 'Quote, lapses in 28 days', 2, true],
-      [refs.agreed, 'Deposit, lapses in 5 days', 2, false],
     ]);
+    expect(short(lists.value.customer)).toEqual([[refs.agreed, 'Deposit, lapses in 5 days', 2, false]]);
     expect(JSON.stringify(lists.value)).not.toContain(refs.guest);
+  });
+
+  it('passes the turn back to the customer once their message is answered', async () => {
+    const { services, owner } = setting;
+    await sendMessage(services, owner, refs.quoted, { clientId: 'message-0002', body: 'Of course.' });
+    const lists = await readTurnList(services, owner);
+    if (!lists.ok) throw new Error(lists.problem.message);
+    expect(lists.value.studio.map((line) => line.ref)).toEqual([refs.waiting]);
+    expect(lists.value.customer.map((line) => line.ref)).toContain(refs.quoted);
   });
 
   it('of enquiries leaves out what is agreed', async () => {
