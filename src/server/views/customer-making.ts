@@ -1,6 +1,6 @@
 import { asc, desc, eq } from 'drizzle-orm';
 import { runnerOf, type RunnerStep } from '../../commission/making/customer-runner';
-import { SCRAP_CAUSES, STAGE_ACTS, type PieceStage, type ScrapCause } from '../../commission/making/making';
+import { SCRAP_CAUSES, STAGE_OPERATIONS, type PieceStage, type ScrapCause } from '../../commission/making/making';
 import type { CommissionRow } from '../commissions';
 import type { Db } from '../db/client';
 import { events } from '../db/schema/commissions';
@@ -154,6 +154,7 @@ function newsOf(shown: Shown, lines: readonly EventRow[]): BenchNews[] {
   return [...photoNews, ...scraps].sort((a, b) => b.at.getTime() - a.at.getTime());
 }
 
+/** What the photos of a stage show: the work towards it, since they are taken before it is reached. */
 function titleOf(stage: PieceStage): string {
   const titles: Partial<Record<PieceStage, string>> = {
     waiting: 'At the bench',
@@ -161,9 +162,9 @@ function titleOf(stage: PieceStage): string {
     mould: 'The mould',
     poured: 'At the pour',
     sound: 'Out of the mould',
-    inspected: 'Ready for you',
+    inspected: 'The finished piece',
   };
-  return titles[stage] ?? STAGE_ACTS[stage];
+  return titles[stage] ?? STAGE_OPERATIONS[stage];
 }
 
 function scrapNews(line: EventRow, shown: Shown): BenchNews {
