@@ -32,7 +32,7 @@ export async function sendRevision(page: Page, revision: number): Promise<void> 
 
 /** Hands the parcel to the carrier. */
 export async function dispatch(page: Page, ref: string): Promise<void> {
-  await page.goto(`/studio/commissions/${ref}#dispatch`);
+  await page.goto(`/studio/commissions/${ref}`);
   await page.getByLabel('Carrier').fill('Estuary Parcels');
   await page.getByLabel('Tracking number').fill('EP 1632 960 188');
   await page.getByLabel('An adult must sign for it').check();
