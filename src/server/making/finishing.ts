@@ -15,7 +15,6 @@ import { acceptedDraft } from '../quote/promise';
 import { dayAfter } from '../quote/promised-days';
 import type { Services } from '../services';
 
-const BALANCE_DAYS = 14;
 const LOOK_DAYS = 14;
 
 /** T31: every piece has passed inspection; the balance falls due and the customer sees the final photos. */
@@ -66,6 +65,7 @@ async function queueFinishedMail(
 ): Promise<void> {
   const now = services.now();
   const balance = await readBalance(tx, commission.id, now);
+  const dueAt = balance.stages.findLast((stage) => stage.owedMinor > 0)?.dueAt;
   await queueMail(tx, {
     letter: 'M23',
     to: commission.email,
@@ -88,11 +88,11 @@ async function queueFinishedMail(
             ]
           : [],
       ),
-      ...(balance.dueMinor > 0
+      ...(balance.dueMinor > 0 && dueAt
         ? {
             balance: {
               amount: { minor: balance.dueMinor, currency: currencySchema.parse(balance.currency) },
-              dueBy: dayAfter(now, BALANCE_DAYS),
+              dueBy: dayAfter(dueAt, 0),
             },
           }
         : {}),

@@ -2,6 +2,7 @@ import { and, eq, inArray, isNull, sql } from 'drizzle-orm';
 import { uuidv7 } from 'uuidv7';
 import { balanceOf, type Balance } from '../../commission/balance';
 import type { Db, Transaction } from '../db/client';
+import { commissions } from '../db/schema/commissions';
 import { checkoutSessions, ledgerEntries, numberSeries, quotes, stagePayments } from '../db/schema/quotes';
 
 export type LedgerEntry = typeof ledgerEntries.$inferSelect;
@@ -60,17 +61,22 @@ export async function acceptedStages(db: Db, commissionId: string): Promise<Stag
 
 const PAY_WITHIN_DAYS = { 'gate-a': 7, 'before-dispatch': 14, rework: 14 } as const;
 
-/** Makes the stages of these triggers due, each after the days it is given; one that is due already keeps its day. */
+/**
+ * Makes the stages of these triggers due, each after the days it is given, or after the buyer's days of credit when those
+ * are more; one that is due already keeps its day.
+ */
 export async function callInStages(
   tx: Transaction,
   commissionId: string,
   triggers: readonly (keyof typeof PAY_WITHIN_DAYS)[],
   at: Date,
 ): Promise<void> {
+  const [row] = await tx.select({ buyer: commissions.buyer }).from(commissions).where(eq(commissions.id, commissionId));
   for (const stage of await acceptedStages(tx, commissionId)) {
     const trigger = triggers.find((each) => each === stage.trigger);
     if (!trigger) continue;
-    const dueAt = new Date(at.getTime() + PAY_WITHIN_DAYS[trigger] * 86_400_000);
+    const days = Math.max(PAY_WITHIN_DAYS[trigger], row?.buyer?.netDays ?? 0);
+    const dueAt = new Date(at.getTime() + days * 86_400_000);
     await tx
       .update(stagePayments)
       .set({ dueAt })

@@ -13,6 +13,8 @@ export interface Receipt {
   label: string;
   title: string;
   customer: string;
+  /** Number of the buyer's purchase order. */
+  poNumber?: string;
   amountMinor: number;
   /** Split as agreed for the stage; null when the money fits no stage. */
   tax: { netMinor: number; taxMinor: number } | null;
@@ -42,6 +44,7 @@ export async function readReceipt(
     label: stage?.label ?? 'Payment',
     title: found.value.title,
     customer: found.value.customerName,
+    ...(found.value.buyer?.poNumber ? { poNumber: found.value.buyer.poNumber } : {}),
     amountMinor: entry.amountMinor,
     tax:
       stage && stage.grossMinor === entry.amountMinor ? { netMinor: stage.netMinor, taxMinor: stage.taxMinor } : null,

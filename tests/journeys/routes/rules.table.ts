@@ -122,6 +122,7 @@ export const RULES: Record<string, Partial<Record<Method, Rule>>> = {
     GET: { may: 'quote:write' },
     POST: { may: 'quote:write', body: { act: 'reprice', version: 0 } },
   },
+  '/api/commissions/[ref]/buyer-terms': door('commission:triage', { poNumber: 'PO 7', netDays: '30' }),
   '/api/commissions/[ref]/quotes': door('quote:write', { version: 1, revision: 1, freeze: 'on' }),
   '/api/commissions/[ref]/quotes/[revision]/withdraw': door('quote:write', { reason: 'None.' }),
   '/api/commissions/[ref]/rights': door('commission:triage', { designSource: 'own', rightsNote: 'They said so.' }),

@@ -7,8 +7,13 @@ import { sendMessage } from '../../../src/server/enquiry/messages';
 import { answerQuestions, askQuestions, readQuestions } from '../../../src/server/enquiry/questions';
 import { recordRights } from '../../../src/server/enquiry/rights';
 import { declineEnquiry, sendEstimate } from '../../../src/server/enquiry/triage';
+import { buyerTermsSchema } from '../../../src/commission/enquiry/buyer-terms';
+import { acceptSchema } from '../../../src/commission/enquiry/triage';
+import { setBuyerTerms } from '../../../src/server/enquiry/buyer-terms';
+import { readBalance } from '../../../src/server/money/ledger';
+import { acceptQuote } from '../../../src/server/quote/acceptance';
 import { readOwnerCommission } from '../../../src/server/views/owner-commission';
-import { codeOf, commission, letters, newEnquiry, openSetting, type Setting } from './deal-setting';
+import { codeOf, commission, letters, newEnquiry, openSetting, sentQuote, type Setting } from './deal-setting';
 
 let setting: Setting;
 beforeAll(async () => {
@@ -211,5 +216,38 @@ describe('messages', () => {
       ['customer', 'Could the grip be oak?'],
       ['studio', 'It can.'],
     ]);
+  });
+});
+
+// Job.md capability 41: a purchase order, net days, booked on the owner's decision of credit.
+describe('an institution’s terms', () => {
+  const terms = (typed: Record<string, string>) => buyerTermsSchema.parse({ poNumber: '', netDays: '', ...typed });
+  const set = (ref: string, typed: Record<string, string>, actor = setting.owner) =>
+    setBuyerTerms(setting.services, actor, ref, terms(typed));
+
+  it('put off the first payment by its days, and stand from acceptance on; the order’s number may follow', async () => {
+    const { services, customer } = setting;
+    const ref = await newEnquiry(setting, { buyer: 'institution' });
+    expect(codeOf(await set(ref, { netDays: '30' }))).toBe('ok');
+    expect((await commission(setting, ref)).buyer).toEqual({ kind: 'institution', netDays: 30 });
+    await sentQuote(setting, ref);
+    const yes = acceptSchema.parse({ revision: '1', typedName: 'Lenn Valley', terms: 'yes', bespoke: 'yes', mark: 'yes', adult: 'yes' }); // prettier-ignore
+    expect(codeOf(await acceptQuote(services, customer, ref, yes, '192.0.2.5'))).toBe('ok');
+    const { id } = await commission(setting, ref);
+    const { stages } = await readBalance(services.db, id, services.now());
+    expect(stages[0]!.dueAt).toEqual(new Date(services.now().getTime() + 30 * 86_400_000));
+    expect(await set(ref, { netDays: '60', poNumber: 'LV-7' })).toMatchObject({
+      problem: { code: 'conflict', fields: { netDays: expect.stringContaining('30 days') } },
+    });
+    expect(codeOf(await set(ref, { netDays: '30', poNumber: 'LV-7' }))).toBe('ok');
+    expect((await commission(setting, ref)).buyer).toMatchObject({ poNumber: 'LV-7', netDays: 30 });
+  });
+
+  it('are the owner’s to set, and no private buyer’s', async () => {
+    const ref = await newEnquiry(setting, { buyer: 'institution' });
+    for (const actor of [setting.customer, setting.maker, setting.bookkeeper])
+      expect(codeOf(await set(ref, { netDays: '30' }, actor))).not.toBe('ok');
+    expect(codeOf(await set(await newEnquiry(setting), { netDays: '30' }))).toBe('conflict');
+    expect(buyerTermsSchema.safeParse({ netDays: '400' }).success).toBe(false);
   });
 });
