@@ -71,7 +71,7 @@ export default defineConfig({
         "manifest-src 'self'",
         "object-src 'none'",
         "frame-src 'none'",
-        "base-uri 'self'",
+        "base-uri 'none'",
       ],
     },
   },

@@ -12,7 +12,8 @@ import { readConfig } from '../../src/server/config';
 import { FILE_HEADER } from '../../src/server/file-response';
 import { createLog } from '../../src/server/log';
 
-const page = `<!doctype html><title>Forms</title>${'<p>Bronze for the hand.</p>'.repeat(200)}`;
+const OWN_POLICY = "default-src 'self'; script-src 'self' 'sha256-x='; object-src 'none'; base-uri 'none';";
+const page = `<!doctype html><meta http-equiv="content-security-policy" content="${OWN_POLICY}"><title>Forms</title>${'<p>Bronze for the hand.</p>'.repeat(200)}`;
 const stored = Buffer.from(Array.from({ length: 300_000 }, (_, index) => index % 251));
 
 const named: Record<string, string> = {
@@ -74,6 +75,15 @@ async function ask(path: string, options: { method?: string; headers?: Record<st
   return { status: res.statusCode!, headers: res.headers, body: Buffer.concat(chunks) } satisfies Answer;
 }
 
+/** Sends bytes as they are and gives back the first line of what is answered. */
+async function firstLine(bytes: string): Promise<string> {
+  const socket = connect(port, '127.0.0.1');
+  socket.write(bytes);
+  const [answer] = (await once(socket, 'data')) as [Buffer];
+  socket.destroy();
+  return answer.toString().split('\r\n', 1)[0]!;
+}
+
 beforeAll(async () => {
   folder = mkdtempSync(join(tmpdir(), 'pourwright-front-'));
   mkdirSync(join(folder, 'site/forms'), { recursive: true });
@@ -101,6 +111,7 @@ describe('a built page', () => {
     expect(answer.status).toBe(200);
     expect(brotliDecompressSync(answer.body).toString()).toBe(page);
     expect(answer.headers['content-security-policy']).toContain("frame-ancestors 'none'");
+    expect(answer.headers['content-security-policy']).toContain(OWN_POLICY);
     expect(answer.headers['x-content-type-options']).toBe('nosniff');
     expect(answer.headers['referrer-policy']).toBe('same-origin');
     expect(answer.headers['permissions-policy']).toContain('camera=(self)');
@@ -116,6 +127,14 @@ describe('a built page', () => {
   it('keeps what has a hash in its name for ever, and a page never', async () => {
     expect((await ask('/_astro/a.B1.js')).headers['cache-control']).toContain('immutable');
     expect((await ask('/forms')).headers['cache-control']).toBe('no-cache');
+  });
+
+  // RFC 9110 section 15.5.6: 405 names the methods there are.
+  it.each(['POST', 'PUT', 'PATCH', 'DELETE', 'OPTIONS'])('is not changed by a %s', async (method) => {
+    for (const path of ['/forms', '/_astro/a.B1.js']) {
+      const { status, headers } = await ask(path, { method, headers: { 'content-length': '0' } });
+      expect([status, headers.allow]).toEqual([405, 'GET, HEAD']);
+    }
   });
 
   it('that nobody made is answered by the page that says so, and at an endpoint in JSON', async () => {
@@ -160,9 +179,24 @@ describe('a page made at the request', () => {
     expect((await ask('/studio', { headers: { host: 'evil.example' } })).status).toBe(421);
     for (const path of ['//studio', '/\\studio', '/%2fstudio']) expect((await ask(path)).status).toBe(400);
     expect((await ask('/studio', { method: 'TRACE' })).status).toBe(405);
+    expect(await firstLine(`GET /studio HTTP/1.1\r\nHost: localhost:${port}\r\nHost: evil.example\r\n\r\n`)).toMatch(
+      / 400 /,
+    );
     expect((await ask('/_image?href=/a.png')).status).toBe(404);
   });
 });
+
+// OWASP ASVS 5.0, 3.4.3 and 3.4.6: every answer has a policy, with no other base and no frame around it.
+it.each(['/forms', '/_astro/a.B1.js', '/studio', '/api/who', '/api/file', '/nothing', '/%2fstudio', '/api/nothing'])(
+  'the policy of %s is whole',
+  async (path) => {
+    const policy = (await ask(path)).headers['content-security-policy'] ?? '';
+    expect(policy).toMatch(/frame-ancestors 'none'/);
+    expect(policy).toMatch(/default-src '(self|none)'/);
+    if (path !== '/studio') expect(policy).toMatch(/base-uri 'none'/);
+    expect(policy).not.toMatch(/script-src[^;]*unsafe/);
+  },
+);
 
 describe('a stored file', () => {
   it('arrives whole, uncompressed and with its length', async () => {
@@ -192,13 +226,16 @@ describe('a stored file', () => {
 
 describe('a body', () => {
   it('of the allowed size passes, a larger one and one of untold size do not', async () => {
-    const send = (bytes: number, path = '/api/form') =>
-      ask(path, { method: 'POST', body: Buffer.alloc(bytes), headers: { 'content-length': `${bytes}` } });
+    const send = (bytes: number, path = '/api/form', type = 'application/json') => {
+      const headers = { 'content-length': `${bytes}`, 'content-type': type };
+      return ask(path, { method: 'POST', body: Buffer.alloc(bytes), headers });
+    };
     expect((await send(1024 * 1024)).status).toBe(200);
     const refused = await send(1024 * 1024 + 1);
     expect(refused.status).toBe(413);
     expect(JSON.parse(refused.body.toString()).problem.message).toContain('1 MB');
-    expect((await send(2 * 1024 * 1024, '/api/uploads')).status).toBe(200);
+    expect((await send(2 * 1024 * 1024, '/api/uploads', 'multipart/form-data; boundary=b')).status).toBe(200);
+    expect((await send(2 * 1024 * 1024, '/api/uploads')).status).toBe(413);
     const untold = await ask('/api/form', {
       method: 'POST',
       headers: { 'transfer-encoding': 'chunked' },

@@ -20,6 +20,7 @@ describe('the spelling of an address', () => {
     '/%2e%2e/studio',
     '/%252fstudio',
     '/studio%00',
+    '/price/sent?ref=%00',
     '/studio%0a',
     '/studio%zz',
     '/studio%c3%28',
@@ -57,8 +58,17 @@ describe('the size of a body', () => {
     ['/photos', 1],
     ['/api/stripe/webhook', 1],
   ])('%s may carry %i MB', (path, megabytes) => {
-    expect(allowanceFor(path).bytes).toBe(megabytes * 1024 * 1024);
+    expect(allowanceFor(path, 'multipart/form-data; boundary=b').bytes).toBe(megabytes * 1024 * 1024);
   });
+
+  // What is no form with a file in it is read into memory.
+  it.each(['application/x-www-form-urlencoded', 'application/json', 'text/plain', undefined])(
+    'as %s may carry one megabyte everywhere',
+    (type) => {
+      for (const path of ['/api/uploads', '/api/bench/P-7/photos', '/api/commissions/MF-0181/files'])
+        expect(allowanceFor(path, type).bytes).toBe(1024 * 1024);
+    },
+  );
 });
 
 describe('what the log keeps of an address', () => {

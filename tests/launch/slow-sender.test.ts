@@ -15,7 +15,7 @@ afterEach(() => void vi.useRealTimers());
 
 it('cuts a sender that has not sent its form after a minute, and one that falls silent sooner', () => {
   const request = arriving(100);
-  watchSender(request, allowanceFor('/api/form'));
+  watchSender(request, allowanceFor('/api/form', 'application/json'));
   expect(request.socket.setTimeout).toHaveBeenCalledWith(30_000);
   vi.advanceTimersByTime(59_999);
   expect(request.socket.destroy).not.toHaveBeenCalled();
@@ -25,7 +25,7 @@ it('cuts a sender that has not sent its form after a minute, and one that falls 
 
 it('gives a large file forty minutes', () => {
   const request = arriving(200_000_000);
-  watchSender(request, allowanceFor('/api/uploads'));
+  watchSender(request, allowanceFor('/api/uploads', 'multipart/form-data; boundary=b'));
   vi.advanceTimersByTime(40 * 60_000 - 1);
   expect(request.socket.destroy).not.toHaveBeenCalled();
   vi.advanceTimersByTime(1);
@@ -34,7 +34,7 @@ it('gives a large file forty minutes', () => {
 
 it('leaves alone whoever sent everything, however long the answer takes', () => {
   const request = arriving(100);
-  watchSender(request, allowanceFor('/api/form'));
+  watchSender(request, allowanceFor('/api/form', 'application/json'));
   request.emit('end');
   vi.advanceTimersByTime(3_600_000);
   expect(request.socket.destroy).not.toHaveBeenCalled();

@@ -16,8 +16,12 @@ const FORM: Allowance = { bytes: MB, milliseconds: 60_000 };
 /** A sender that is silent for so long in the middle of a body is given up. */
 const SILENCE = 30_000;
 
-/** The allowance of a path; uploads and photos are streamed to disk and may be large. */
-export function allowanceFor(path: string): Allowance {
+/**
+ * The allowance of a path; uploads and photos are streamed to disk and may be large. Whatever does not come as a form
+ * with a file in it is read into memory and stays small everywhere.
+ */
+export function allowanceFor(path: string, contentType: string | undefined): Allowance {
+  if (!contentType?.startsWith('multipart/form-data')) return FORM;
   if (path === '/api/uploads' || path.startsWith('/api/uploads/')) return UPLOAD;
   if (/^\/api\/commissions\/[^/]+\/files$/.test(path)) return UPLOAD;
   if (path.startsWith('/api/') && /\/photos(\/|$)/.test(path)) return PHOTO;

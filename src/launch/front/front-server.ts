@@ -14,7 +14,7 @@ import { deliverFile, interceptAnswer } from './deliver-file';
 import { knownHosts, normaliseForwarding } from './proxy';
 import { logRequest } from './request-log';
 import { refuseByAddress, type Refusal } from './request-rules';
-import { commonHeaders, contentPolicy, framingPolicy } from './security-headers';
+import { commonHeaders, contentPolicy, framingPolicy, staticPolicy } from './security-headers';
 import { loadStaticFiles } from './static-files';
 
 /** Astro's built server in middleware mode; it calls `next` for a path that is no page. */
@@ -40,12 +40,15 @@ export function createFrontServer(config: Config, log: Logger, staticFolder: str
     ...common,
     'content-security-policy': contentPolicy(own, type, framing),
   });
-  const answerStatic = loadStaticFiles(staticFolder, (type) => staticPolicy(type, common, framing));
+  const answerStatic = loadStaticFiles(staticFolder, (type, body) => ({
+    ...common,
+    'content-security-policy': staticPolicy(type, body, framing),
+  }));
 
   function passToPages(req: IncomingMessage, res: ServerResponse, path: string): void {
     logRequest(req, res, log);
     normaliseForwarding(req, config);
-    watchSender(req, allowanceFor(path));
+    watchSender(req, allowanceFor(path, req.headers['content-type']));
     compress(req as never, res as never, () => undefined);
     interceptAnswer(
       res,
@@ -71,8 +74,8 @@ export function createFrontServer(config: Config, log: Logger, staticFolder: str
     const refusal = refuseByAddress(req, hosts);
     const path = (req.url ?? '').split('?', 1)[0]!;
     if (refusal) return refuse(res, refusal, withPolicy('text/plain'));
-    if (isRead(req) && answerStatic(req, res, path)) return;
-    const tooMuch = refuseBody(req, allowanceFor(path));
+    if (answerStatic(req, res, path)) return;
+    const tooMuch = refuseBody(req, allowanceFor(path, req.headers['content-type']));
     if (tooMuch) {
       req.resume();
       return refuse(res, tooMuch, withPolicy('application/json'));
@@ -94,17 +97,6 @@ const nothingHere: Refusal = { status: 404, message: 'There is nothing at this a
 
 function isRead(req: IncomingMessage): boolean {
   return req.method === 'GET' || req.method === 'HEAD';
-}
-
-function staticPolicy(type: string, common: Record<string, string>, framing: string): OutgoingHttpHeaders {
-  // A built page carries its script hashes in its own <meta>; both policies hold. A script's own policy binds the
-  // worker it starts, which imports its parts.
-  const policy = type.startsWith('text/html')
-    ? `object-src 'none'; base-uri 'self'; ${framing}`
-    : type.startsWith('text/javascript')
-      ? "default-src 'self'"
-      : "default-src 'none'; style-src 'unsafe-inline'";
-  return { ...common, 'content-security-policy': policy };
 }
 
 /** Answers in JSON, as the upload page and every API caller expect; a person reads the same sentence. */

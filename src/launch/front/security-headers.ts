@@ -22,13 +22,31 @@ export function framingPolicy(config: Config): string {
   return `frame-ancestors 'none'; form-action 'self' ${payPage}`;
 }
 
+// No answer may be framed or given another base, a picture or a file no more than a page.
+const NEVER = "base-uri 'none'; frame-ancestors 'none'";
+
 /**
  * The whole Content-Security-Policy of an answer.
  *
  * @param own the policy that the page or file brought along
  */
 export function contentPolicy(own: string | undefined, type: string, framing: string): string {
-  const page = type.startsWith('text/html');
-  if (own) return page ? `${own.replace(/;\s*$/, '')}; ${framing}` : own;
-  return page ? `default-src 'self'; object-src 'none'; base-uri 'self'; ${framing}` : "default-src 'none'";
+  if (!type.startsWith('text/html')) return `${own ?? "default-src 'none'"}; ${NEVER}`;
+  return `${own?.replace(/;\s*$/, '') ?? "default-src 'self'; object-src 'none'; base-uri 'none'"}; ${framing}`;
 }
+
+/**
+ * The policy of a built file. A built page carries its own in a `<meta>`, with the hashes of its scripts; as a header
+ * it holds from the first byte. A script's policy binds the worker it starts, which imports its parts.
+ */
+export function staticPolicy(type: string, body: Buffer, framing: string): string {
+  if (type.startsWith('text/html')) {
+    return contentPolicy(POLICY_META.exec(body.toString('utf8'))?.[1], type, framing);
+  }
+  const own = type.startsWith('text/javascript')
+    ? "default-src 'self'"
+    : "default-src 'none'; style-src 'unsafe-inline'";
+  return contentPolicy(own, type, framing);
+}
+
+const POLICY_META = /<meta http-equiv="content-security-policy" content="([^"]*)"/i;

@@ -37,16 +37,18 @@ interface StaticFile {
   variants: Partial<Record<Encoding, Variant>>;
 }
 
-/** Answers from memory with a built page or asset; false when there is none at this path. */
+type PageHeaders = (type: string, body: Buffer) => OutgoingHttpHeaders;
+
+/** Answers from memory with a built page or asset, which can only be read; false when there is none at this path. */
 export type StaticFiles = (req: IncomingMessage, res: ServerResponse, path: string) => boolean;
 
 /**
  * Reads the built site into memory. Each file is compressed once, when first asked for.
  *
  * @param folder `dist/client`
- * @param pageHeaders gives the headers of a file from its media type
+ * @param pageHeaders gives the headers of a file from its media type and content
  */
-export function loadStaticFiles(folder: string, pageHeaders: (type: string) => OutgoingHttpHeaders): StaticFiles {
+export function loadStaticFiles(folder: string, pageHeaders: PageHeaders): StaticFiles {
   const files = new Map<string, StaticFile>();
   for (const entry of readdirSync(folder, { recursive: true, withFileTypes: true })) {
     if (!entry.isFile()) continue;
@@ -58,7 +60,8 @@ export function loadStaticFiles(folder: string, pageHeaders: (type: string) => O
   return (req, res, path) => {
     const file = files.get(path) ?? files.get(plainSpelling(path));
     if (!file) return false;
-    sendStatic(req, res, file);
+    if (req.method === 'GET' || req.method === 'HEAD') sendStatic(req, res, file);
+    else refuseToChange(req, res, file);
     return true;
   };
 }
@@ -68,15 +71,28 @@ function plainSpelling(path: string): string {
   return decoded.length > 1 && decoded.endsWith('/') ? decoded.slice(0, -1) : decoded;
 }
 
-function readStaticFile(file: string, path: string, pageHeaders: (type: string) => OutgoingHttpHeaders): StaticFile {
+function readStaticFile(file: string, path: string, pageHeaders: PageHeaders): StaticFile {
   const body = readFileSync(file);
   const type = TYPES[extname(file)] ?? 'application/octet-stream';
   const etag = `"${createHash('sha256').update(body).digest('base64url').slice(0, 22)}"`;
   // Names under /_astro/ hold a hash of the content, so a copy stays right for ever.
   const cache = path.startsWith('/_astro/') ? 'public, max-age=31536000, immutable' : 'no-cache';
-  const headers = { ...pageHeaders(type), 'content-type': type, etag, 'cache-control': cache, vary: 'accept-encoding' };
+  const headers = {
+    ...pageHeaders(type, body),
+    'content-type': type,
+    etag,
+    'cache-control': cache,
+    vary: 'accept-encoding',
+  };
   const compressible = /^text\/|javascript|json|xml|manifest/.test(type) && body.length > 1_000;
   return { body, etag, headers, compressible, variants: {} };
+}
+
+function refuseToChange(req: IncomingMessage, res: ServerResponse, file: StaticFile): void {
+  req.resume();
+  const headers = { 'content-type': 'text/plain; charset=utf-8', 'cache-control': 'no-store', allow: 'GET, HEAD' };
+  res.writeHead(405, { ...file.headers, ...headers });
+  res.end('This address can only be read.\n');
 }
 
 function sendStatic(req: IncomingMessage, res: ServerResponse, file: StaticFile): void {

@@ -31,10 +31,12 @@ export function guard(routePattern: string, user: Actor): 'open' | 'sign-in-need
 }
 
 /**
- * True when a URL's path is spelled as we link to it. `//studio`, `/\studio` and `%2f` can reach a page past checks that
- * compare paths; the front server refuses them first, and this holds where it does not stand in front.
+ * True when a URL's path is spelled as we link to it, and no part of it holds a zero character, which no text may.
+ * `//studio`, `/\studio` and `%2f` can reach a page past checks that compare paths; the front server refuses them first,
+ * and this holds where it does not stand in front.
  */
 export function isCanonicalPath(requestUrl: string): boolean {
+  if (requestUrl.includes('%00')) return false;
   const path = requestUrl.replace(/^[a-z]+:\/\/[^/\\?#]*/i, '').split(/[?#]/, 1)[0] ?? '';
-  return !/\/\/|\\|%2f|%5c|%2e|%25|%00/i.test(path);
+  return !/\/\/|\\|%2f|%5c|%2e|%25/i.test(path);
 }
