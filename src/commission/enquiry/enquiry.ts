@@ -96,9 +96,11 @@ export function missingDeclaration(bladed: boolean, adult: boolean): string | nu
   return 'This piece is a blade. We sell blades to people aged 18 or over only; tick that you are, or ask an adult to enquire.';
 }
 
+const DAY = new Intl.DateTimeFormat('en-GB', { day: 'numeric', month: 'long', year: 'numeric', timeZone: 'UTC' });
+
 /** When it is needed, in words. */
 export function neededByWords(enquiry: Pick<Words, 'neededBy' | 'neededByDate' | 'neededBySeason'>): string {
-  if (enquiry.neededBy === 'date' && enquiry.neededByDate) return enquiry.neededByDate;
+  if (enquiry.neededBy === 'date' && enquiry.neededByDate) return DAY.format(new Date(enquiry.neededByDate));
   if (enquiry.neededBy === 'season' && enquiry.neededBySeason) return enquiry.neededBySeason;
   return 'No date';
 }

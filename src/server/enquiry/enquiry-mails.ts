@@ -1,8 +1,11 @@
 import { asc, eq } from 'drizzle-orm';
 import { uuidv7 } from 'uuidv7';
+import { studioAlloy } from '../../casting/studio-alloys';
+import { countryName } from '../../commission/countries';
 import { suggestQuestions, type EnquiryFacts } from '../../commission/enquiry/checklist';
 import { neededByWords, requestOf, type Enquiry } from '../../commission/enquiry/enquiry';
 import { DESIGN_SOURCES, INTENDED_USES } from '../../commission/enquiry/enquiry-choices';
+import { currencySchema, formatMoney } from '../../commission/money';
 import type { CommissionRow } from '../commissions';
 import type { Db, Transaction } from '../db/client';
 import { uploads } from '../db/schema/commissions';
@@ -44,14 +47,16 @@ export function summaryOf(commission: CommissionRow): { label: string; value: st
   const facts = [
     { label: 'Piece', value: commission.title },
     { label: 'Number of pieces', value: String(commission.pieces) },
-    { label: 'Metal', value: commission.alloy },
+    { label: 'Metal', value: studioAlloy(commission.alloy)?.name ?? commission.alloy },
     { label: 'What is wanted', value: wish.length > 280 ? `${wish.slice(0, 277)}…` : wish },
     { label: 'For', value: INTENDED_USES[enquiry.use] },
     { label: 'Needed by', value: neededByWords(enquiry) },
-    { label: 'Goes to', value: commission.destination },
+    { label: 'Goes to', value: countryName(commission.destination) },
     { label: 'Design', value: DESIGN_SOURCES[enquiry.designSource] },
   ];
-  return enquiry.budget ? [...facts, { label: 'Budget', value: `${enquiry.budget} ${commission.currency}` }] : facts;
+  if (!enquiry.budget) return facts;
+  const currency = currencySchema.parse(commission.currency);
+  return [...facts, { label: 'Budget', value: formatMoney(enquiry.budget * 100, currency, { pence: 'whole' }) }];
 }
 
 /** Queues M1 to the customer and M2 to every owner, once for each enquiry. */

@@ -30,7 +30,16 @@ export const codeSchema = z.object({
   code: z
     .string({ error: 'Type the six digits from the mail.' })
     .transform((typed) => typed.normalize('NFKC').replace(/[\s-]/g, ''))
-    .pipe(z.string().regex(/^\d{6}$/, { error: 'The code has six digits; it stands in the mail below the link.' })),
+    .pipe(z.string().regex(/^\d{6}$/, { error: 'The code has six digits; it stands in the mail, above the link.' })),
+});
+
+/** The enquiry whose page the code was typed on, if any: a refusal leads back there. */
+export const codeFromSchema = z.object({
+  enquiry: z
+    .string()
+    .regex(/^[A-Z]{1,4}-\d{3,6}$/)
+    .optional()
+    .catch(undefined),
 });
 
 /** Somebody signed in: where they go, and the cookie that says so. Never answer with the cookies in a body. */

@@ -40,8 +40,13 @@ export async function readHistory(
     id: event.id,
     at: event.at,
     code: event.code,
-    who: (event.actorRole !== 'customer' && givenName) || (ROLE_WORDS[event.actorRole] ?? event.actorRole),
+    who: whoActed(event.actorRole, givenName, readers),
     sentence: event.sentence,
     public: event.public,
   }));
+}
+
+function whoActed(role: string, givenName: string | null, readers: 'studio' | 'customer'): string {
+  if (role === 'customer' && readers === 'customer') return 'you';
+  return (role !== 'customer' && givenName) || (ROLE_WORDS[role] ?? role);
 }

@@ -51,6 +51,17 @@ describe('the sign-in doors', () => {
     expect(await (await phone.get(me)).json()).toMatchObject({ user: { role: 'customer' } });
   });
 
+  it('lead a wrong code back to the page it was typed on, with what was typed', async () => {
+    const browser = new Browser(services);
+    const typed = { email: 'wrong@example.org', code: 'abc' };
+    const fromEnquiry = await browser.post(typeCode, { ...typed, enquiry: 'MF-0188' });
+    expect(fromEnquiry.headers.get('location')).toMatch(/^\/price\/sent\?ref=MF-0188&again=/);
+    const bare = await browser.post(typeCode, typed);
+    expect(bare.headers.get('location')).toMatch(/^\/sign-in\/code\?again=/);
+    const elsewhere = await browser.post(typeCode, { ...typed, enquiry: '//evil.example' });
+    expect(elsewhere.headers.get('location')).toMatch(/^\/sign-in\/code\?again=/);
+  });
+
   it('never put the session in a body', async () => {
     const browser = new Browser(services);
     const mail = await askAndRead(services, 'body@example.org');

@@ -2,7 +2,7 @@ import type { APIRoute } from 'astro';
 import { done } from '../../../commission/problem';
 import { keepSession, sessionTokenOf, visitorOf } from '../../../server/auth/door-cookies';
 import { answer, readInput } from '../../../server/door';
-import { codeSchema, spendCode } from '../../../server/people/sign-in-spend';
+import { codeFromSchema, codeSchema, spendCode } from '../../../server/people/sign-in-spend';
 
 export const prerender = false;
 
@@ -15,5 +15,7 @@ export const POST: APIRoute = async (context) => {
     : input;
   if (spent.ok) keepSession(services.config, context, spent.value);
   const outcome = spent.ok ? done({ next: spent.value.next }) : spent;
-  return answer(context, outcome, { to: ({ next }) => next, back: '/sign-in/code' });
+  const from = await readInput(context, codeFromSchema);
+  const back = from.ok && from.value.enquiry ? `/price/sent?ref=${from.value.enquiry}` : '/sign-in/code';
+  return answer(context, outcome, { to: ({ next }) => next, back });
 };
