@@ -24,6 +24,14 @@ function isChanged(field: Element): boolean {
   return field.value !== field.defaultValue || field.checked !== field.defaultChecked;
 }
 
+/** What the reader unfolded or folded stays so. */
+function keepOpen(part: Element, next: Element): void {
+  const folds = part.querySelectorAll('details');
+  next.querySelectorAll('details').forEach((fold, index) => {
+    fold.open = folds[index]?.open ?? fold.open;
+  });
+}
+
 async function refresh(): Promise<void> {
   if (reading) {
     again = true;
@@ -36,7 +44,9 @@ async function refresh(): Promise<void> {
     const fresh = new DOMParser().parseFromString(await response.text(), 'text/html');
     for (const part of document.querySelectorAll('[data-live]')) {
       const next = fresh.querySelector(`[data-live="${part.getAttribute('data-live')}"]`);
-      if (next && !isBusy(part) && next.innerHTML !== part.innerHTML) part.replaceChildren(...next.childNodes);
+      if (!next || isBusy(part)) continue;
+      keepOpen(part, next);
+      if (next.innerHTML !== part.innerHTML) part.replaceChildren(...next.childNodes);
     }
   } finally {
     reading = false;
