@@ -25,6 +25,8 @@ export async function checkEnquiry(services: Services, actor: Actor, input: Enqu
     return refuseField('email', 'This is not one mail address. It should look like name@example.org, without spaces.');
   const byOwner = actor?.role === 'owner';
   if (!byOwner && asksForForgery(`${input.wish}\n${input.rightsNote ?? ''}`)) return refuseField('wish', MARK_REFUSAL);
+  if (input.neededBy === 'date' && (input.neededByDate ?? '') <= services.now().toISOString().slice(0, 10))
+    return refuseField('neededByDate', 'This day is past. Give the day on which the piece must be in your hands.');
   const card = await currentRateCard(services);
   const request = requestOf(input);
   const bladed = isBladed(request, card.forms);

@@ -50,6 +50,14 @@ describe('T1, an enquiry', () => {
     expect(await letters(setting, row.ref)).toEqual(['M1 to isolde@example.org', 'M2 to wren@example.org']);
   });
 
+  it('is not taken in for a day that is past', async () => {
+    const past = enquiry({ neededBy: 'date', neededByDate: '2020-01-01' });
+    expect(await sendEnquiry(setting.services, setting.customer, SENDER, past)).toMatchObject({
+      ok: false,
+      problem: { code: 'invalid', fields: { neededByDate: expect.stringContaining('past') } },
+    });
+  });
+
   it('pressed again, or eight times at once, is one commission', async () => {
     const { services, customer } = setting;
     const input = enquiry();
