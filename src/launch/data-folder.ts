@@ -1,16 +1,18 @@
-import { existsSync, mkdirSync, readFileSync, rmSync, writeFileSync } from 'node:fs';
+import { chmodSync, existsSync, mkdirSync, readFileSync, rmSync, writeFileSync } from 'node:fs';
 import { join } from 'node:path';
 import { LaunchProblem } from './problem';
 
 /**
  * Makes the data folder and claims it for this process, so that two starts never share a database.
- * The claim of a process that was killed counts for nothing.
+ * The claim of a process that was killed counts for nothing. What customers send lies in `uploads`, which no other
+ * account of the machine may open; the folder itself must be open, since the database runs under another account.
  *
  * @returns a function that gives the claim back
  * @throws LaunchProblem when the folder cannot be written or another start holds it
  */
 export function claimDataFolder(folder: string): () => void {
   const claim = join(folder, 'running.pid');
+  const uploads = join(folder, 'uploads');
   const holder = readClaim(claim);
   if (holder && holder !== process.pid && isLauncher(holder)) {
     throw new LaunchProblem(
@@ -20,6 +22,8 @@ export function claimDataFolder(folder: string): () => void {
   }
   try {
     if (!existsSync(folder)) mkdirSync(folder, { recursive: true, mode: 0o755 });
+    mkdirSync(uploads, { recursive: true });
+    chmodSync(uploads, 0o700);
     writeFileSync(claim, `${process.pid}\n`);
   } catch (error) {
     const reason = error instanceof Error ? error.message : String(error);

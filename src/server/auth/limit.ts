@@ -43,7 +43,7 @@ const ALLOWANCES = {
   },
   enquiry: { points: 12, seconds: HOUR, said: 'Very many enquiries came from here within an hour.' },
   estimate: { points: 600, seconds: HOUR, said: 'Very many prices were asked for from here within an hour.' },
-  upload: { points: 240, seconds: HOUR, said: 'Very many files came from here within an hour.' },
+  upload: { points: 400, seconds: HOUR, said: 'Very many or very large files came from here within an hour.' },
   message: { points: 60, seconds: HOUR, said: 'Very many messages came from you within an hour.' },
 } satisfies Record<string, Allowance>;
 
@@ -52,7 +52,7 @@ export type LimitKind = keyof typeof ALLOWANCES;
 const LIMITERS = new WeakMap<pg.Pool, Map<LimitKind, RateLimiterPostgres>>();
 
 /**
- * Counts one attempt of `kind` for `key` and refuses it with `too-many` when its allowance is used up. Counts are
+ * Counts one attempt of `kind` for `key`, or as many as `points` says, and refuses it with `too-many` when its allowance is used up. Counts are
  * kept in the database, under a keyed hash, so that neither a restart nor a second server forgets them and no
  * address can be read out of them. Every allowance fills again by itself.
  */
@@ -60,9 +60,10 @@ export async function limit(
   services: { pool: pg.Pool; config: { authSecret: string } },
   kind: LimitKind,
   key: string,
+  points = 1,
 ): Promise<Outcome<null>> {
   try {
-    await limiterOf(services.pool, kind).consume(keyedHash(services.config.authSecret, 'limit', key));
+    await limiterOf(services.pool, kind).consume(keyedHash(services.config.authSecret, 'limit', key), points);
     return done(null);
   } catch (error) {
     if (!(error instanceof RateLimiterRes)) throw error;

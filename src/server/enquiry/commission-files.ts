@@ -1,4 +1,4 @@
-import { eq } from 'drizzle-orm';
+import { count, eq } from 'drizzle-orm';
 import type { Actor } from '../../commission/permissions';
 import { done, refuse, type Outcome } from '../../commission/problem';
 import { claimUploads, findClaimable } from './claim-uploads';
@@ -6,6 +6,7 @@ import { findCommission, lockCommission } from '../commissions';
 import { uploads } from '../db/schema/commissions';
 import { recordEvent } from '../history';
 import type { Services } from '../services';
+import { limitUpload } from '../uploads/limit-upload';
 import { receiveUpload, type UploadAnswer } from '../uploads/receive-upload';
 
 const TAKES_FILES = new Set([
@@ -19,6 +20,8 @@ const TAKES_FILES = new Set([
   'held',
   'issue',
 ]);
+
+const MOST_FILES = 120;
 
 /**
  * Takes in one more file from the customer of a commission and puts it with that commission at once.
@@ -39,6 +42,14 @@ export async function addCommissionFile(
       'This commission takes no more files. Write us a message if there is something we should see.',
     );
   }
+  if (await isFull(services, found.value.id)) {
+    return refuse(
+      'too-many',
+      `${MOST_FILES} files are with this commission already. Write us a message about the rest.`,
+    );
+  }
+  const allowed = await limitUpload(services, actor!.id, request);
+  if (!allowed.ok) return allowed;
   const received = await receiveUpload(services, actor, browserId, request);
   if (!received.ok) return received;
   return services.db.transaction(async (tx) => {
@@ -59,4 +70,9 @@ export async function addCommissionFile(
     });
     return done(received.value);
   });
+}
+
+async function isFull({ db }: Services, commissionId: string): Promise<boolean> {
+  const [held] = await db.select({ files: count() }).from(uploads).where(eq(uploads.commissionId, commissionId));
+  return (held?.files ?? 0) >= MOST_FILES;
 }
