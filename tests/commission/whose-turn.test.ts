@@ -37,7 +37,7 @@ describe('whose turn it is', () => {
   it.each<[DealState, Partial<TurnFacts>, string, RegExp]>([
     ['enquiry', {}, 'studio', /we read your enquiry/i],
     ['asking', { questions: { open: 2, askedAt: days(-1) } }, 'customer', /2 questions/],
-    ['asking', { questions: { open: 1, askedAt: days(-1) } }, 'customer', /one question/],
+    ['asking', { questions: { open: 1, askedAt: days(-1) } }, 'customer', /One question waits/],
     ['asking', {}, 'customer', /send the answers/i],
     ['estimated', {}, 'studio', /firm quote/],
     ['quoted', { quote }, 'customer', /revision 2 .* 6 days more/],

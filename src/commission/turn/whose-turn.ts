@@ -75,7 +75,7 @@ const BOOKED =
 function asking(facts: TurnFacts): WhoseTurn {
   const open = facts.questions?.open ?? 0;
   const since = facts.questions?.askedAt ?? facts.since;
-  const count = open === 1 ? 'one question' : `${open} questions`;
+  const count = open === 1 ? 'One question' : `${open} questions`;
   if (open === 0)
     return {
       who: 'customer',
@@ -85,8 +85,8 @@ function asking(facts: TurnFacts): WhoseTurn {
     };
   return {
     who: 'customer',
-    sentence: `We asked you ${count}. Answer ${open === 1 ? 'it' : 'them'} on this page and we go on.`,
-    studioSentence: `${count[0]!.toUpperCase()}${count.slice(1)} open`,
+    sentence: `${count} ${open === 1 ? 'waits for your answer' : 'wait for your answers'} on this page; then we go on.`,
+    studioSentence: `${count} open`,
     since,
   };
 }

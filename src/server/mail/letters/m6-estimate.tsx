@@ -25,9 +25,8 @@ export const m6 = letter('M6', {
       </>
     ),
     next: {
-      turn: 'yours',
-      words:
-        'Tell us whether the range suits you, and we write the quote. You can also change the piece and ask again.',
+      turn: 'ours',
+      words: 'We work out the firm quote and send it to you. Write to us if the range does not suit you.',
     },
     link: { to: pageOf(data), label: 'See the estimate' },
     details: (
