@@ -1,5 +1,7 @@
 import { and, eq } from 'drizzle-orm';
+import { countryName } from '../../commission/countries';
 import { quoteDraftSchema } from '../../commission/pricing/quote-draft';
+import { withPieces } from '../../commission/sentence';
 import type { CommissionRow } from '../commissions';
 import type { Db, Transaction } from '../db/client';
 import { commissions } from '../db/schema/commissions';
@@ -29,12 +31,15 @@ export async function writePromise(tx: Transaction, commission: CommissionRow, f
 export async function pieceFacts(db: Db, commission: CommissionRow): Promise<{ label: string; value: string }[]> {
   const draft = await acceptedDraft(db, commission.id);
   const facts = [
-    { label: 'Piece', value: `${commission.title}${commission.pieces > 1 ? `, ${commission.pieces} of them` : ''}` },
+    { label: 'Piece', value: withPieces(commission.title, commission.pieces) },
     { label: 'Metal', value: draft?.metal.name ?? commission.alloy },
   ];
   if (draft) {
     const tolerance = Math.round(draft.massesG.finished * draft.massTolerance);
-    facts.push({ label: 'Finished mass', value: `${draft.massesG.finished} g ± ${tolerance} g each` });
+    facts.push({
+      label: 'Finished mass',
+      value: `${draft.massesG.finished} g ± ${tolerance} g${commission.pieces > 1 ? ' each' : ''}`,
+    });
     for (const [index, sentence] of draft.specification.slice(0, 6).entries()) {
       facts.push({ label: index === 0 ? 'Made like this' : 'And', value: sentence });
     }
@@ -42,7 +47,7 @@ export async function pieceFacts(db: Db, commission: CommissionRow): Promise<{ l
   const address = commission.shipping?.lines.join(', ');
   facts.push({
     label: 'Goes to',
-    value: address ? `${address}, ${commission.shipping!.country}` : commission.destination,
+    value: [address, countryName(commission.shipping?.country ?? commission.destination)].filter(Boolean).join(', '),
   });
   return facts;
 }
