@@ -5,7 +5,8 @@ import type { FakeResponse } from './message';
 /** The look of both fakes: chalk ground, graphite ink, verdigris for what is paid, molten for the one main act. */
 const CSS = `
 @font-face { font-family: 'Archivo'; src: url('/__look/archivo.woff2') format('woff2'); font-weight: 100 900; font-display: swap; }
-@font-face { font-family: 'Fraunces'; src: url('/__look/fraunces.woff2') format('woff2'); font-weight: 100 900; font-display: swap; }
+@font-face { font-family: 'Fraunces'; src: url('/__look/fraunces-500.woff2') format('woff2'); font-weight: 500; font-display: swap; }
+@font-face { font-family: 'Fraunces'; src: url('/__look/fraunces-600.woff2') format('woff2'); font-weight: 600; font-display: swap; }
 :root {
   --chalk: oklch(0.972 0.005 195); --graphite: oklch(0.25 0.018 215); --muted: oklch(0.47 0.02 210);
   --hairline: oklch(0.86 0.012 200); --verdigris: oklch(0.47 0.075 185); --tint: oklch(0.90 0.035 185);
@@ -87,12 +88,13 @@ summary { cursor: pointer; min-height: 1.75rem; }
 
 const FONTS: Record<string, string> = {
   '/__look/archivo.woff2': '@fontsource-variable/archivo/files/archivo-latin-wght-normal.woff2',
-  '/__look/fraunces.woff2': '@fontsource-variable/fraunces/files/fraunces-latin-wght-normal.woff2',
+  '/__look/fraunces-500.woff2': '@fontsource/fraunces/files/fraunces-latin-500-normal.woff2',
+  '/__look/fraunces-600.woff2': '@fontsource/fraunces/files/fraunces-latin-600-normal.woff2',
 };
 
 const require = createRequire(import.meta.url);
 
-/** The style sheet and the two type faces; null for any other path. */
+/** The style sheet and the type faces; null for any other path. */
 export function lookFile(path: string): FakeResponse | null {
   const headers = { 'cache-control': 'max-age=3600' };
   if (path === '/__look/look.css') {

@@ -102,8 +102,3 @@ export function freezingGroup(alloy: Pick<Alloy, 'solidusC' | 'liquidusC'>): 'sh
   if (range < 50) return 'short';
   return range <= 110 ? 'intermediate' : 'long';
 }
-
-/** True when nobody has found the value in print: shown as unverified. */
-export function fromMemory(value: { source: string } | null): boolean {
-  return value?.source === 'memory';
-}

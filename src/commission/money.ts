@@ -31,16 +31,6 @@ export function floorToStep(value: number, step: number): number {
   return Math.floor((value + SLACK) / step) * step || 0;
 }
 
-/** Rounds minor units up to a multiple of `major` whole pounds, euros or dollars: ceilToMajor(218941, 5) = 219000. */
-export function ceilToMajor(minor: number, major: number): number {
-  return ceilToStep(minor, major * 100);
-}
-
-/** Rounds minor units down to a multiple of `major` whole pounds, euros or dollars. */
-export function floorToMajor(minor: number, major: number): number {
-  return floorToStep(minor, major * 100);
-}
-
 /** A rate applied to an amount in minor units, half-up: tax on a document line, for instance. */
 export function share(amountMinor: number, rate: number): number {
   return halfUp(amountMinor * rate);

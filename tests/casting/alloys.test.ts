@@ -6,7 +6,6 @@ import {
   alloySources,
   freezingGroup,
   freezingRangeC,
-  fromMemory,
   refusedMetals,
   type Alloy,
 } from '../../src/casting/alloys';
@@ -148,9 +147,8 @@ describe('freezing', () => {
 
 describe('memory, refusals and sources', () => {
   it('marks what nobody found in print', () => {
-    expect(fromMemory(alloyById('tin-bronze-c90900')!.densityGPerCm3)).toBe(true);
-    expect(fromMemory(alloyById('tin-bronze-c90700')!.densityGPerCm3)).toBe(false);
-    expect(fromMemory(null)).toBe(false);
+    expect(alloyById('tin-bronze-c90900')!.densityGPerCm3?.source).toBe('memory');
+    expect(alloyById('tin-bronze-c90700')!.densityGPerCm3?.source).not.toBe('memory');
   });
 
   it('refuses arsenical bronze, beryllium copper and scrap of unknown make-up, each with a reason', () => {

@@ -30,12 +30,6 @@ export function pathData(points: Point[], closed: boolean, tolerance = 0.04): st
   return closed ? `${body}Z` : body;
 }
 
-/** SVG path data for a full circle, mm. */
-export function circleData([x, y]: Point, r: number): string {
-  const [left, size] = [number(x - r), number(r)];
-  return `M${left} ${number(y)}a${size} ${size} 0 1 0 ${number(2 * r)} 0a${size} ${size} 0 1 0 ${number(-2 * r)} 0Z`;
-}
-
 /** Dots as zero-length strokes: with round line ends each becomes a point of the pen. */
 export function dotsData(points: Point[]): string {
   return points.map(([x, y]) => `M${number(x)} ${number(y)}h0`).join('');

@@ -3,7 +3,6 @@ import { amountMinorSchema, halfUp } from '../money';
 
 /** Where a line enters the model: one-off before or after gate A, once an attempt, once a sound piece, by hand, bought in. */
 export const lineGroupSchema = z.enum(['before-gate', 'after-gate', 'attempt', 'metal', 'hand', 'sundries']);
-export type LineGroup = z.infer<typeof lineGroupSchema>;
 
 /**
  * One cost line. Its cost per unit is minutes x hourly rate, half-up to the minor unit, plus materials; the unit is the

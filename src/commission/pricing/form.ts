@@ -38,7 +38,6 @@ export const workSchema = z.object({
   /** Mass one haft adds to the parcel, g. */
   haftMassG: z.number().int().min(0).max(5000),
 });
-export type FormWork = z.infer<typeof workSchema>;
 
 export const haftOptionSchema = z.object({ code: z.string().min(1).max(40), name: text });
 

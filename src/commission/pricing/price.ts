@@ -9,11 +9,6 @@ export function priceWithMargin(costMinor: number, margin: number): number {
   return costMinor / (1 - margin);
 }
 
-/** A margin on price as a markup on cost: 20 % is 25 %. */
-export function markupOf(margin: number): number {
-  return margin / (1 - margin);
-}
-
 /**
  * Prices in minor units, up to a whole price step. Firm = the larger of expected cost with margin and P80 cost without: it
  * earns the margin on average and breaks even in four outcomes of five.

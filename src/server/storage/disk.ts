@@ -1,6 +1,6 @@
 import { createHash } from 'node:crypto';
 import { createWriteStream } from 'node:fs';
-import { mkdir, open, rename, rm, stat } from 'node:fs/promises';
+import { mkdir, open, rename, rm } from 'node:fs/promises';
 import { dirname, join } from 'node:path';
 import { Transform, type Readable } from 'node:stream';
 import { pipeline } from 'node:stream/promises';
@@ -106,14 +106,4 @@ export async function put(folder: string, area: 'uploads' | 'photos', ending: st
 /** Deletes stored files; one that is gone already is no error. */
 export async function discard(folder: string, ...keys: (string | null | undefined)[]): Promise<void> {
   for (const key of keys) if (key) await rm(pathOf(folder, key), { force: true });
-}
-
-/** Size in bytes of a stored file, or null when it is not there. */
-export async function sizeOf(folder: string, key: string): Promise<number | null> {
-  try {
-    return (await stat(pathOf(folder, key))).size;
-  } catch (error) {
-    if ((error as NodeJS.ErrnoException).code === 'ENOENT') return null;
-    throw error;
-  }
 }

@@ -19,7 +19,7 @@ function file(clientId: string, length?: number): Request {
   const body = new FormData();
   body.set('clientId', clientId);
   body.set('file', new File([STEP], 'hilt.step'));
-  const headers = length === undefined ? {} : { 'content-length': `${length}` };
+  const headers = new Headers(length === undefined ? [] : [['content-length', `${length}`]]);
   return new Request('http://localhost/', { method: 'POST', body, headers });
 }
 const codes = async (outcomes: Promise<{ ok: boolean; problem?: { code: string } }>[]) =>
