@@ -3,12 +3,15 @@ import userEvent from '@testing-library/user-event';
 import { HttpResponse, http } from 'msw';
 import { setupServer } from 'msw/node';
 import { afterAll, afterEach, beforeAll, describe, expect, it } from 'vitest';
+import { deskChoices } from '../../src/commission/pricing/desk-choices';
 import { deskFields } from '../../src/commission/pricing/desk-fields';
+import { metalLines } from '../../src/commission/pricing/metal-lines';
 import { formatMoney } from '../../src/commission/money';
 import { priceQuote } from '../../src/commission/pricing/quote';
 import type { QuoteDraft } from '../../src/commission/pricing/quote-draft';
 import { QuoteDesk } from '../../src/components/studio/QuoteDesk';
 import { swordFromFile } from '../../src/demo/drafts';
+import { demoRates } from '../../src/demo/rates';
 
 const server = setupServer();
 beforeAll(() => server.listen({ onUnhandledRequest: 'error' }));
@@ -24,6 +27,7 @@ function openDesk(draft: QuoteDraft = { ...swordFromFile(), termsVersion: '2026-
       customer="Isolde Wintermere"
       revision={1}
       draft={draft}
+      choices={deskChoices(demoRates)}
       fields={deskFields(draft, 0)}
       problem={null}
       differences={[]}
@@ -93,6 +97,48 @@ describe('the quote desk', () => {
     await person.type(within(row).getByRole('textbox', { name: /^Materials/ }), '100');
     expect(rows()).toBe(2);
     expect(price()).not.toBe('£2,190');
+  });
+
+  it('lets the metal follow the masses, key by key, until its amount is typed over', async () => {
+    const { draft, person } = openDesk();
+    const amountOf = (label: string) => screen.getByRole('textbox', { name: `Materials, ${label}` });
+    const retype = async (input: HTMLElement, text: string) => {
+      await person.clear(input);
+      await person.type(input, text);
+    };
+    await retype(screen.getByRole('textbox', { name: 'As cast, each' }), '900');
+    await retype(screen.getByRole('textbox', { name: 'Poured, each' }), '1680');
+    // Job.md 4.1, 4.2: 146.00 x 1,680 / 8,400; 43 g at 14.60; 780 g at 4.80; 900 g at 14.60 per kg.
+    const amounts = { 'Share of a heat': '29.20', 'Metal lost in the melt': '0.63', 'Gating back to the returns': '3.74', 'Metal in the piece': '13.14' }; // prettier-ignore
+    for (const [label, amount] of Object.entries(amounts)) expect(amountOf(label)).toHaveProperty('value', amount);
+    const massesG = { finished: 720, cast: 900, poured: 1680 };
+    const metal = metalLines(massesG, draft.metal, 14_600, 8400);
+    const lines = draft.lines.map((line) => metal.find((each) => each.id === line.id) ?? line);
+    const expected = priceQuote({ ...draft, massesG, lines });
+    expect(screen.getByText('Expected').nextElementSibling?.textContent).toBe(
+      formatMoney(Math.round(expected.cost.expected), 'GBP'),
+    );
+    await retype(amountOf('Metal in the piece'), '20.00');
+    await retype(screen.getByRole('textbox', { name: 'As cast, each' }), '880');
+    expect(amountOf('Metal in the piece')).toHaveProperty('value', '20.00');
+    expect(amountOf('Gating back to the returns')).toHaveProperty('value', '3.84');
+  });
+
+  it('takes rush, another alloy, another currency and export', async () => {
+    const { draft, person } = openDesk();
+    await person.click(screen.getByRole('checkbox', { name: 'Rush' }));
+    // Worked example 1, rush: 2,318.52 expected, a price of 2,900.
+    expect(screen.getByText('Expected').nextElementSibling?.textContent).toBe('£2,318.52');
+    expect(price()).toBe('£2,900');
+    await person.click(screen.getByRole('checkbox', { name: 'Rush' }));
+    await person.selectOptions(screen.getByRole('combobox', { name: 'Quoted in' }), 'EUR');
+    // 2,190 x 1.1700 x 1.02, up to five.
+    expect(price()).toBe('€2,615');
+    await person.selectOptions(screen.getByRole('combobox', { name: 'Tax' }), 'export');
+    expect(screen.getByText('Total, export')).toBeTruthy();
+    await person.selectOptions(screen.getByRole('combobox', { name: 'Alloy' }), 'TB90');
+    expect(screen.getByRole('textbox', { name: 'Materials, Metal in the piece' })).toHaveProperty('value', '12.14');
+    expect(draft.metal.code).toBe('TB88');
   });
 
   it('saves, then asks once more and names what will be frozen', async () => {

@@ -1,4 +1,6 @@
 import { costLine, unitCostMinor, type CostLine } from './cost-lines';
+import { chosenCurrency, chosenMetal, namingMetal, rushOf, type DeskChoices } from './desk-choices';
+import { followsMasses, reckonAgain } from './follow-masses';
 import { unflatten } from '../input-fields';
 import type { Desk, DeskLine } from './desk';
 import type { PriceChoice, QuoteDraft } from './quote-draft';
@@ -12,6 +14,7 @@ export interface DeskLineFields {
   rateMinorPerHour: string;
   materialsMinor: string;
   zeroReason: string;
+  follows: boolean;
   drop: boolean;
 }
 
@@ -22,6 +25,12 @@ export interface DeskFields {
   specification: string;
   pieces: string;
   finishedMassG: string;
+  castMassG: string;
+  pouredMassG: string;
+  alloy: string;
+  currency: string;
+  tax: QuoteDraft['tax']['kind'];
+  rush: boolean;
   massTolerance: string;
   lines: DeskLineFields[];
   margin: string;
@@ -47,6 +56,7 @@ export const BLANK_LINE: DeskLineFields = {
   rateMinorPerHour: '',
   materialsMinor: '',
   zeroReason: '',
+  follows: false,
   drop: false,
 };
 
@@ -61,6 +71,12 @@ export function deskFields(draft: QuoteDraft, version: number): DeskFields {
     specification: draft.specification.join('\n'),
     pieces: String(draft.pieces),
     finishedMassG: String(draft.massesG.finished),
+    castMassG: String(draft.massesG.cast),
+    pouredMassG: String(draft.massesG.poured),
+    alloy: draft.metal.code,
+    currency: draft.currency.quoted,
+    tax: draft.tax.kind,
+    rush: draft.rush !== null,
     massTolerance: percent(draft.massTolerance),
     lines: [...draft.lines.map(lineFields), BLANK_LINE],
     margin: percent(draft.pricing.margin),
@@ -87,20 +103,33 @@ function lineFields(line: CostLine): DeskLineFields {
     rateMinorPerHour: line.rateMinorPerHour === 0 ? '' : major(line.rateMinorPerHour),
     materialsMinor: line.materialsMinor === 0 ? '' : major(line.materialsMinor),
     zeroReason: line.zeroReason ?? '',
+    follows: followsMasses(line),
     drop: false,
   };
 }
 
-/** The draft with what was typed at the desk put in. A line keeps what the table does not show. */
-export function applyDesk(draft: QuoteDraft, desk: Desk): QuoteDraft {
+/**
+ * The draft with what was typed at the desk put in. A line keeps what the table does not show.
+ *
+ * @param live the desk's own scripts take the tick off a metal line at the first key typed into its amount; a plain form
+ *   cannot, so there an amount that is neither the draft's nor the reckoned one counts as typed
+ */
+export function applyDesk(draft: QuoteDraft, desk: Desk, choices: DeskChoices, live = false): QuoteDraft {
+  const massesG = { finished: desk.finishedMassG, cast: desk.castMassG, poured: desk.pouredMassG };
+  const metal = chosenMetal(draft, desk.alloy, choices);
+  const again = (line: CostLine) => reckonAgain(line, draft, { massesG, metal }, choices);
   return {
     ...draft,
     title: desk.title,
-    specification: desk.specification,
+    specification: namingMetal(desk.specification, metal, choices),
     pieces: desk.pieces,
-    massesG: { ...draft.massesG, finished: desk.finishedMassG },
+    metal,
+    massesG,
     massTolerance: desk.massTolerance,
-    lines: applyLines(draft.lines, desk.lines),
+    lines: applyLines(draft.lines, desk.lines, again, live),
+    rush: rushOf(draft, desk.rush, desk.pieces * massesG.poured, choices),
+    currency: chosenCurrency(draft, desk.currency, choices),
+    tax: { ...draft.tax, kind: desk.tax },
     pricing: { ...draft.pricing, margin: desk.margin },
     price: priceChoice(desk),
     carriage: { minor: desk.carriageMinor, words: desk.carriageWords },
@@ -117,10 +146,18 @@ function priceChoice(desk: Desk): PriceChoice {
   return { kind: 'own', workMinor: desk.ownMinor ?? 0, reason: desk.ownReason ?? '' };
 }
 
-function applyLines(before: readonly CostLine[], typed: readonly DeskLine[]): CostLine[] {
+function applyLines(
+  before: readonly CostLine[],
+  typed: readonly DeskLine[],
+  again: (line: CostLine) => CostLine,
+  live: boolean,
+): CostLine[] {
   const taken = new Set(before.map((line) => line.id));
-  return typed.map(({ id, drop: _drop, zeroReason, ...figures }, index) => {
+  return typed.map(({ id, drop: _drop, follows, zeroReason, ...figures }, index) => {
     const known = before.find((line) => line.id === id);
+    const reckoned = known && follows ? again(known) : null;
+    if (reckoned && (live || [known!.materialsMinor, reckoned.materialsMinor].includes(figures.materialsMinor)))
+      return { ...reckoned, label: figures.label, group: figures.group };
     const base = known ?? costLine({ id: freeId(taken, index), label: figures.label, group: figures.group });
     const isSameWork = base.minutes === figures.minutes && base.materialsMinor === figures.materialsMinor;
     // What an amount was reckoned from is no longer true once another amount is typed over it.
@@ -146,11 +183,13 @@ export function fieldsWithTyped(fields: DeskFields, typed: Record<string, string
   const nested = unflatten(typed) as Partial<Record<keyof DeskFields, unknown>>;
   const text = Object.entries(nested).filter(([name, value]) => name in fields && typeof value === 'string');
   const lines = Array.isArray(nested.lines) ? nested.lines.map(lineWithTyped) : fields.lines;
-  return { ...fields, ...Object.fromEntries(text), lines, version: fields.version };
+  const rush = lines === fields.lines ? fields.rush : nested.rush !== undefined;
+  return { ...fields, ...Object.fromEntries(text), lines, rush, version: fields.version };
 }
 
 function lineWithTyped(typed: unknown): DeskLineFields {
   const line = (typed ?? {}) as Record<string, unknown>;
   const texts = Object.entries(line).filter(([name, value]) => name in BLANK_LINE && typeof value === 'string');
-  return { ...BLANK_LINE, ...Object.fromEntries(texts), drop: line['drop'] !== undefined };
+  const [follows, drop] = ['follows', 'drop'].map((name) => line[name] !== undefined) as [boolean, boolean];
+  return { ...BLANK_LINE, ...Object.fromEntries(texts), follows, drop };
 }

@@ -1,4 +1,5 @@
 import { z } from 'zod';
+import { currencySchema } from '../money';
 import { lineGroupSchema } from './cost-lines';
 import {
   amountField,
@@ -25,6 +26,8 @@ const deskLineSchema = z.object({
   rateMinorPerHour: z.preprocess(blankIsZero, amountField(AMOUNT, 1000)),
   materialsMinor: z.preprocess(blankIsZero, amountField(AMOUNT)),
   zeroReason: optionalText(200, 'Keep the reason under 200 characters.'),
+  /** The amount is reckoned from the masses and the metal's prices. */
+  follows: tick,
   drop: tick,
 });
 export type DeskLine = z.output<typeof deskLineSchema>;
@@ -53,6 +56,12 @@ export const deskSchema = z.preprocess(
       specification: textLines(30, 300, 'At most 30 lines of up to 300 characters.'),
       pieces: wholeNumber('Give a whole number of pieces.', 1, 200),
       finishedMassG: wholeNumber('Give the finished mass in whole grams.', 1, 50_000),
+      castMassG: wholeNumber('Give the mass as cast in whole grams.', 1, 50_000),
+      pouredMassG: wholeNumber('Give the poured mass in whole grams.', 1, 50_000),
+      alloy: z.string('Choose an alloy.').min(1, 'Choose an alloy.').max(20),
+      currency: currencySchema,
+      tax: z.enum(['standard', 'export'], 'Choose the tax.'),
+      rush: tick,
       massTolerance: decimal('Give the tolerance as a percentage such as 5.', 0, 50).transform(
         (percent) => percent / 100,
       ),

@@ -32,7 +32,7 @@ const perKg = (minor: number) => `${(minor / 100).toFixed(2)} per kg`;
 /** The heat's share, melt loss and gating of one attempt, and the metal in one sound piece. Amounts half-up. */
 export function metalLines(massesG: Masses, metal: QuoteMetal, heatMinor: number, planningLoadG: number): CostLine[] {
   const lostG = meltLossG(massesG.poured, metal.meltLoss);
-  const gatingG = massesG.poured - massesG.cast;
+  const gatingG = Math.max(0, massesG.poured - massesG.cast);
   const downgrade = metal.ingotMinorPerKg - metal.returnsMinorPerKg;
   return [
     costLine({

@@ -74,6 +74,7 @@ interface DeskRowProps extends Pick<DeskTableProps, 'form' | 'errors'> {
 
 function DeskRow({ form, row, index, known, line, errors }: DeskRowProps) {
   const name = <K extends keyof DeskFields['lines'][number]>(field: K) => `lines.${index}.${field}` as const;
+  const unfollow = () => row.follows && form.setValue(name('follows'), false);
   const faults = Object.entries(errors).filter(([path]) => path.startsWith(`lines.${index}.`));
   const cell = (field: 'minutes' | 'rateMinorPerHour' | 'materialsMinor', label: string) => (
     <td className="amount" data-label={label}>
@@ -85,7 +86,7 @@ function DeskRow({ form, row, index, known, line, errors }: DeskRowProps) {
         aria-label={`${label}, ${row.label || 'another line'}`}
         aria-invalid={errors[name(field)] ? true : undefined}
         defaultValue={row[field]}
-        {...form.register(name(field))}
+        {...form.register(name(field), { onChange: () => unfollow() })}
       />
     </td>
   );
@@ -149,6 +150,12 @@ function DeskRowMore({ form, row, index, known, errors, isOpen }: Omit<DeskRowPr
             {...form.register(`${at}.zeroReason`)}
           />
         </label>
+        {row.follows && (
+          <label className="choice">
+            <input type="checkbox" value="yes" defaultChecked {...form.register(`${at}.follows`)} />
+            <span>Reckon it from the masses and the metal’s price</span>
+          </label>
+        )}
         {!isNew && (
           <label className="choice">
             <input type="checkbox" value="yes" defaultChecked={row.drop} {...form.register(`${at}.drop`)} />

@@ -12,7 +12,7 @@ interface DeskWordsProps {
 
 /** What the quote says beside its price: piece, mass, dates, carriage, mark, terms of standing. */
 export function DeskWords({ form, initial, errors, currency }: DeskWordsProps) {
-  const field = (name: Exclude<keyof DeskFields, 'lines'>) => ({
+  const field = (name: Exclude<keyof DeskFields, 'lines' | 'rush'>) => ({
     name,
     value: initial[name],
     error: errors[name],
@@ -32,7 +32,6 @@ export function DeskWords({ form, initial, errors, currency }: DeskWordsProps) {
         <Field label="Rounds of change" inputMode="numeric" {...field('includedRounds')} />
         <Field label="Stands for" unit="days" inputMode="numeric" {...field('validityDays')} />
         <Field label="Carriage, at cost" unit={currency} inputMode="decimal" {...field('carriageMinor')} />
-        <Field label="Margin" unit="%" inputMode="decimal" {...field('margin')} />
       </div>
       <Field label="Carriage in words" {...field('carriageWords')} />
       <Field label="The mark and where it goes" {...field('mark')} />

@@ -1,12 +1,15 @@
 import { useEffect, useState, type SyntheticEvent } from 'react';
-import { useForm } from 'react-hook-form';
+import { useForm, type UseFormReturn } from 'react-hook-form';
 import { BLANK_LINE, type DeskFields } from '../../commission/pricing/desk-fields';
+import { followsMasses } from '../../commission/pricing/follow-masses';
 import type { Problem } from '../../commission/problem';
 import type { QuoteDraft } from '../../commission/pricing/quote-draft';
 import { Button } from '../ui/Button';
 import { FormProblem } from '../ui/FormProblem';
 import { Notice } from '../ui/Notice';
 import { linesOfRows, readDesk, typedBefore, type DeskReading } from './desk-reading';
+import type { DeskChoices } from '../../commission/pricing/desk-choices';
+import { DeskBasis } from './DeskBasis';
 import { DeskPrice } from './DeskPrice';
 import { CostSums, PriceSums } from './DeskSums';
 import { DeskTable } from './DeskTable';
@@ -21,6 +24,7 @@ export interface QuoteDeskProps {
   revision: number;
   /** The draft as it is saved, or as it comes from the estimate. */
   draft: QuoteDraft;
+  choices: DeskChoices;
   /** What the fields show: the draft's own values, or what a refused form had typed. */
   fields: DeskFields;
   problem: Problem | null;
@@ -67,6 +71,7 @@ export function QuoteDesk(props: QuoteDeskProps) {
             lines={linesOfRows(reading.draft, desk.values.lines)}
           />
           <DeskWords form={form} initial={fields} errors={errors} currency={draft.currency.studio} />
+          <DeskBasis form={form} initial={fields} errors={errors} choices={props.choices} />
         </div>
         <div className="desk-sums">
           <CostSums draft={reading.draft} priced={reading.priced} />
@@ -151,32 +156,34 @@ interface Seen {
   rows: DeskFields['lines'];
 }
 
-function lookAgain(draft: QuoteDraft, values: DeskFields, before: Seen): Seen {
+function lookAgain(draft: QuoteDraft, choices: DeskChoices, values: DeskFields, before: Seen): Seen {
   const last = values.lines[before.rows.length - 1];
   const isFull = (last?.label ?? '').trim() !== '';
   return {
     values,
-    reading: readDesk(draft, values, before.reading),
+    reading: readDesk(draft, values, choices, before.reading),
     rows: isFull ? [...before.rows, BLANK_LINE] : before.rows,
   };
 }
 
 /** The desk's state: the form, its reading at each change, and what came of the last press. */
 function useDesk(props: QuoteDeskProps) {
-  const { draft, fields } = props;
+  const { draft, choices, fields } = props;
   const [start] = useState(() => typedBefore(FORM, fields));
   const form = useForm<DeskFields>({ defaultValues: start });
   const [seen, setSeen] = useState<Seen>(() => ({
     values: fields,
-    reading: readDesk(draft, fields),
+    reading: readDesk(draft, fields, choices),
     rows: fields.lines,
   }));
   useEffect(() => {
-    const look = (values: DeskFields) => setSeen((before) => lookAgain(draft, structuredClone(values), before));
+    const look = (values: DeskFields) =>
+      setSeen((before) => lookAgain(draft, choices, structuredClone(values), before));
     // What was typed before this script came is read as soon as the first drawing is done.
     queueMicrotask(() => look(form.getValues()));
     return form.subscribe({ formState: { values: true }, callback: ({ values }) => look(values) });
-  }, [draft, form]);
+  }, [draft, choices, form]);
+  useFollowing(form, seen);
   const [standing, setStanding] = useState<Standing>({
     version: Number(fields.version),
     revision: props.revision,
@@ -186,6 +193,19 @@ function useDesk(props: QuoteDeskProps) {
   });
   const submit = useSubmit(props, form.getValues, standing, setStanding);
   return { form, ...seen, standing, submit };
+}
+
+/** Writes the amounts that follow the masses into their inputs, so that what is shown is what is reckoned. */
+function useFollowing(form: UseFormReturn<DeskFields>, { reading, values }: Seen) {
+  useEffect(() => {
+    if (Object.keys(reading.errors).length > 0) return;
+    linesOfRows(reading.draft, values.lines).forEach((line, index) => {
+      if (!line || !followsMasses(line)) return;
+      const amount = (line.materialsMinor / 100).toFixed(2);
+      const name = `lines.${index}.materialsMinor` as const;
+      if (form.getValues(name) !== amount) form.setValue(name, amount);
+    });
+  }, [form, reading, values]);
 }
 
 function useSubmit(

@@ -1,4 +1,5 @@
 import type { CostLine } from '../../commission/pricing/cost-lines';
+import type { DeskChoices } from '../../commission/pricing/desk-choices';
 import { deskSchema } from '../../commission/pricing/desk';
 import { applyDesk, fieldsWithTyped, type DeskFields } from '../../commission/pricing/desk-fields';
 import type { PricedQuote } from '../../commission/pricing/pricing-results';
@@ -14,10 +15,15 @@ export interface DeskReading {
 }
 
 /** Reads the desk's fields by the server's own schema and prices them by the server's own function. */
-export function readDesk(saved: QuoteDraft, fields: DeskFields, before?: DeskReading): DeskReading {
+export function readDesk(
+  saved: QuoteDraft,
+  fields: DeskFields,
+  choices: DeskChoices,
+  before?: DeskReading,
+): DeskReading {
   const parsed = deskSchema.safeParse(fields);
   if (parsed.success) {
-    const draft = applyDesk(saved, parsed.data);
+    const draft = applyDesk(saved, parsed.data, choices, true);
     return { draft, priced: priceQuote(draft), errors: {} };
   }
   const errors: Record<string, string> = {};

@@ -4,6 +4,10 @@ import { MARK_PLACES } from '../../commission/enquiry/enquiry-choices';
 import type { Enquiry } from '../../commission/enquiry/enquiry';
 import type { EstimateRequest } from '../../commission/pricing/estimate-request';
 import type { Estimate } from '../../commission/pricing/pricing-results';
+import type { CostLine } from '../../commission/pricing/cost-lines';
+import type { DeskChoices } from '../../commission/pricing/desk-choices';
+import { followsMasses } from '../../commission/pricing/follow-masses';
+import { metalLines } from '../../commission/pricing/metal-lines';
 import { done, type Outcome } from '../../commission/problem';
 import type { QuoteDraft } from '../../commission/pricing/quote-draft';
 import { CURRENT_TERMS } from '../../commission/terms';
@@ -39,26 +43,37 @@ function shownRange(commission: CommissionRow, draft: QuoteDraft): QuoteDraft['s
 }
 
 /**
- * A saved draft with today's metal, rates, history and queue. The owner's hours, words and own lines stay; what is
- * reckoned from prices (metal, heat, rates an hour) is taken from the fresh one.
+ * A saved draft with today's metal, rates, history and queue. The owner's hours, words, masses, own lines and choice of
+ * alloy, currency and rush stay; what is reckoned from prices (metal, heat, rates an hour) is reckoned anew.
  */
-export function repricedDraft(saved: QuoteDraft, fresh: QuoteDraft): QuoteDraft {
+export function repricedDraft(saved: QuoteDraft, fresh: QuoteDraft, choices: DeskChoices): QuoteDraft {
+  const metal = choices.alloys.find((alloy) => alloy.code === saved.metal.code) ?? fresh.metal;
+  const reckoned = metalLines(saved.massesG, metal, choices.heatMinor, choices.planningLoadG);
   const lines = saved.lines.map((line) => {
+    if (followsMasses(line)) return { ...line, ...amountOf(reckoned.find((each) => each.id === line.id) ?? line) };
     const now = fresh.lines.find((each) => each.id === line.id);
     if (!now) return line;
-    return { ...line, rateMinorPerHour: now.rateMinorPerHour, materialsMinor: now.materialsMinor, driver: now.driver };
+    const priced = { ...line, rateMinorPerHour: now.rateMinorPerHour };
+    // An amount the owner typed over has lost its driver and is theirs to change.
+    return line.driver === '' ? priced : { ...priced, ...amountOf(now) };
   });
   return {
     ...saved,
     lines,
     ratesVersion: fresh.ratesVersion,
-    metal: fresh.metal,
+    metal,
     soundness: fresh.soundness,
     hand: fresh.hand,
     lateShare: fresh.lateShare,
     pricing: { ...fresh.pricing, margin: saved.pricing.margin },
-    currency: fresh.currency,
+    currency: choices.currencies.find(({ quoted }) => quoted === saved.currency.quoted) ?? fresh.currency,
+    rush: saved.rush && { ...saved.rush, heatMinor: choices.heatMinor },
+    tax: { ...saved.tax, rate: fresh.tax.rate },
     dateRange: fresh.dateRange,
     termsVersion: fresh.termsVersion,
   };
+}
+
+function amountOf({ materialsMinor, driver }: CostLine) {
+  return { materialsMinor, driver };
 }

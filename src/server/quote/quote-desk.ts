@@ -1,6 +1,7 @@
 import { desc, eq } from 'drizzle-orm';
 import { canonicalJson } from '../../commission/canonical-json';
 import type { DealState } from '../../commission/deal';
+import { deskChoices, unknownChoices, type DeskChoices } from '../../commission/pricing/desk-choices';
 import { applyDesk } from '../../commission/pricing/desk-fields';
 import type { Desk } from '../../commission/pricing/desk';
 import type { Actor } from '../../commission/permissions';
@@ -9,6 +10,7 @@ import { quoteDraftSchema, type QuoteDraft } from '../../commission/pricing/quot
 import { findCommission, lockCommission, type CommissionRow } from '../commissions';
 import type { Db, Transaction } from '../db/client';
 import { quoteDrafts, quotes } from '../db/schema/quotes';
+import { currentRates } from '../pricing/rates';
 import { freshDraft, repricedDraft } from './fresh-draft';
 import type { Services } from '../services';
 
@@ -17,6 +19,8 @@ export interface QuoteDesk {
   commission: CommissionRow;
   draft: QuoteDraft;
   version: number;
+  /** What may be chosen at the desk, at today's rates. */
+  choices: DeskChoices;
   /** The revision that would be sent next. */
   revision: number;
   /** Price, metal or queue were reckoned with rates that have changed since. */
@@ -36,6 +40,7 @@ export async function openDesk(services: Services, actor: Actor, ref: string | u
     commission,
     draft,
     version: saved?.version ?? 0,
+    choices: deskChoices(await currentRates(services.db)),
     revision: (await lastRevision(services.db, commission.id)) + 1,
     ratesChanged: draft.ratesVersion !== fresh.value.ratesVersion,
   });
@@ -55,12 +60,17 @@ export async function saveDraft(
   if (!found.ok) return found;
   const fresh = await freshDraft(services, found.value);
   if (!fresh.ok) return fresh;
+  const choices = deskChoices(await currentRates(services.db));
   return services.db.transaction(async (tx) => {
     const commission = await lockCommission(tx, found.value.id);
     const open = stillOpen(commission);
     if (!open.ok) return open;
     const saved = await readDraft(tx, commission.id);
-    const parsed = quoteDraftSchema.safeParse(applyDesk(saved?.draft ?? fresh.value, input));
+    const draft = saved?.draft ?? fresh.value;
+    const unknown = unknownChoices(draft, input, choices);
+    const [wrong] = Object.values(unknown);
+    if (wrong) return refuse('invalid', wrong, unknown);
+    const parsed = quoteDraftSchema.safeParse(applyDesk(draft, input, choices));
     if (!parsed.success) return refuse('invalid', parsed.error.issues[0]?.message ?? 'The draft cannot be kept so.');
     return keepDraft(services, tx, commission, saved, parsed.data, input.version);
   });
@@ -77,12 +87,13 @@ export async function repriceDraft(
   if (!found.ok) return found;
   const fresh = await freshDraft(services, found.value);
   if (!fresh.ok) return fresh;
+  const choices = deskChoices(await currentRates(services.db));
   return services.db.transaction(async (tx) => {
     const commission = await lockCommission(tx, found.value.id);
     const open = stillOpen(commission);
     if (!open.ok) return open;
     const saved = await readDraft(tx, commission.id);
-    const draft = saved ? repricedDraft(saved.draft, fresh.value) : fresh.value;
+    const draft = saved ? repricedDraft(saved.draft, fresh.value, choices) : fresh.value;
     return keepDraft(services, tx, commission, saved, draft, input.version);
   });
 }

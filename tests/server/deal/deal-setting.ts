@@ -1,6 +1,7 @@
 import { eq } from 'drizzle-orm';
 import { uuidv7 } from 'uuidv7';
 import { applyDesk, deskFields } from '../../../src/commission/pricing/desk-fields';
+import { deskChoices } from '../../../src/commission/pricing/desk-choices';
 import { deskSchema } from '../../../src/commission/pricing/desk';
 import { enquirySchema, type EnquiryInput } from '../../../src/commission/enquiry/enquiry';
 import type { Actor, Role } from '../../../src/commission/permissions';
@@ -129,4 +130,4 @@ export function codeOf(outcome: { ok: true } | { ok: false; problem: { code: str
 }
 
 export const deskOf = (draft: QuoteDraft, version: number) => deskSchema.parse(deskFields(draft, version));
-export const typedOver = (draft: QuoteDraft) => applyDesk(draft, deskOf(draft, 0));
+export const typedOver = (draft: QuoteDraft) => applyDesk(draft, deskOf(draft, 0), deskChoices(demoRates));
