@@ -1,4 +1,4 @@
-// Judge: the official Stripe SDK (23.1.0) against the fake; job.md capability 6; OWASP WSTG-BUSL-07/-10 for the tamperings.
+// Judge: the official Stripe SDK (23.1.0) against the fake; OWASP WSTG-BUSL-07/-10 for the tamperings.
 import { eq } from 'drizzle-orm';
 import Stripe from 'stripe';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
