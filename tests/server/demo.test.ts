@@ -2,10 +2,9 @@ import { existsSync } from 'node:fs';
 import { asc, count, eq, ne, sql } from 'drizzle-orm';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { committedMinor, costToFinish, expectedMargin } from '../../src/commission/pricing/exposure';
-import { estimate } from '../../src/commission/pricing/estimate';
-import { estimateRequestSchema } from '../../src/commission/pricing/estimate-request';
 import { afterPour } from '../../src/commission/pricing/soundness';
 import { daysBetween } from '../../src/commission/turn/turn-facts';
+import { demoRates } from '../../src/demo/rates';
 import { seedDemo } from '../../src/demo/seed';
 import { commissions, events, questions, uploads } from '../../src/server/db/schema/commissions';
 import { attempts, gates, photos, pieces } from '../../src/server/db/schema/making';
@@ -275,30 +274,11 @@ describe('papers and mails', () => {
   });
 });
 
-// Price, range and first payment of one piece of each form without carriage and tax, in pounds: the studio's own list,
-// drawn up apart from the model.
-describe('the catalogue’s prices by the demo’s rates', () => {
-  it.each([
-    ['flat-axe', 320, 390, [125]],
-    ['palstave', 360, 430, [135]],
-    ['socketed-axe', 395, 510, [200]],
-    ['socketed-gouge', 330, 430, [165]],
-    ['tanged-chisel', 255, 310, [115]],
-    ['leaf-shaped-sword', 1625, 2370, [410, 165]],
-    ['spearhead', 435, 560, [220]],
-    ['socketed-sickle', 415, 540, [210]],
-    ['tanged-razor', 355, 540, [180]],
-    ['riveted-dagger', 670, 960, [170, 95]],
-    ['figure-hilt', 875, 1190, [220, 190]],
-    ['knopped-mace-head', 595, 790, [300]],
-    ['beast-head-handle', 475, 660, [240]],
-    ['serpent-linstock', 700, 1010, [175, 210]],
-  ] as const)('%s from %i to %i, paid first in %j', async (form, from, to, first) => {
-    const priced = estimate(estimateRequestSchema.parse({ form }), await currentRateCard(services));
-    if (!priced.ok) throw new Error(priced.problem.message);
-    const { fromMinor, rangeMinor, stages } = priced.value;
-    expect([fromMinor / 100, rangeMinor.high / 100]).toEqual([from, to]);
-    expect(stages.slice(0, -1).map((stage) => stage.netMinor / 100)).toEqual(first);
+describe('the rates in force after the seed', () => {
+  it('are the ones the price list is held by, with no pour of the stories counted twice', async () => {
+    const card = await currentRateCard(services);
+    expect(card.rates).toEqual(demoRates);
+    expect(card.forms).toHaveLength(14);
   });
 });
 
