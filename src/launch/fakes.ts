@@ -1,6 +1,7 @@
 import type { ChildProcess } from 'node:child_process';
 import { join } from 'node:path';
 import { setTimeout as pause } from 'node:timers/promises';
+import { STUDIO } from '../commission/studio';
 import type { Config } from '../server/config';
 import { endChild, hasEnded } from './child';
 import { isTaken } from './ports';
@@ -22,7 +23,7 @@ export async function startFakes(config: Config): Promise<Fake[]> {
   const { port, publicUrl } = config;
   const stripe = [
     ...options(config, 'stripe', port + 1, `${publicUrl}/api/stripe/webhook`, config.stripeWebhookSecret),
-    ...['--public-url', `http://localhost:${port + 1}`],
+    ...['--public-url', `http://localhost:${port + 1}`, '--studio', STUDIO.name],
   ];
   const resend = options(config, 'resend', port + 2, `${publicUrl}/api/resend/webhook`, config.resendWebhookSecret);
   const fakes = [startFake(config, 'pay page', stripe), startFake(config, 'inbox', resend)];

@@ -1,3 +1,4 @@
+import { withinSentence } from '../../../commission/sentence';
 import { momentInWords, moneyInWords, spanInWords } from '../letter-words';
 import { letter, pageOf } from './letter';
 import { Facts, P, Part, Sums } from './letter-parts';
@@ -13,7 +14,7 @@ export const m12 = letter('M12', {
     lead: (
       <P>
         We have received {moneyInWords(data.amount)} ({data.label}). Thank you.
-        {data.booked && data.place && ` Yours is number ${data.place} among the commissions booked before the bench.`}
+        {data.booked && data.place && ` Its place in the queue for the bench is ${data.place}.`}
       </P>
     ),
     next: { turn: 'ours', words: data.next },
@@ -25,7 +26,13 @@ export const m12 = letter('M12', {
             rows={[
               { label: data.label, amount: data.amount, strong: true },
               ...(data.toCome
-                ? [{ label: 'Still to come', hint: `next: ${data.toCome.next}`, amount: data.toCome.amount }]
+                ? [
+                    {
+                      label: 'Still to come in all',
+                      hint: `the next is the ${withinSentence(data.toCome.next)}`,
+                      amount: data.toCome.amount,
+                    },
+                  ]
                 : []),
             ]}
           />
