@@ -5,6 +5,7 @@ import { freeBasePort } from '../../src/launch/ports';
 import { ledgerEntries } from '../../src/server/db/schema/quotes';
 import type { Services } from '../../src/server/services';
 import { commission, type Setting } from '../server/deal/deal-setting';
+import { furnishFolder } from '../setup/furnished-folder';
 import { startStudio, type StudioProcess } from '../setup/studio-process';
 import { temporaryDataFolder } from '../setup/temporary-folder';
 import { mailOf } from './inbox';
@@ -18,7 +19,11 @@ let places: Places;
 let setting: Setting;
 
 beforeAll(async () => {
-  studio = startStudio(await freeBasePort(), folder);
+  const port = await freeBasePort();
+  const shared = servicesOf();
+  await furnishFolder(folder, shared.config.databaseUrl, port + 3);
+  await shared.pool.end();
+  studio = startStudio(port, folder);
   await studio.ready();
   places = placesOn(studio.port);
   setting = await settingOf(servicesOf(studio.port, folder), 'Linnet Overbury');

@@ -39,9 +39,10 @@ export class Visitor {
     const response = await fetch(`${this.url}${path}`, { ...init, method, headers, redirect: 'manual' });
     for (const line of response.headers.getSetCookie()) this.keep(line);
     const location = response.headers.get('location');
-    const isStream = response.headers.get('content-type')?.startsWith('text/event-stream');
-    if (isStream) await response.body?.cancel();
-    const body = isStream ? '' : await response.text();
+    // Words alone are kept: a stream of news never ends, and a picture's bytes say nothing.
+    const hasWords = /^(text\/(?!event-stream)|application\/json)/.test(response.headers.get('content-type') ?? '');
+    if (!hasWords) await response.body?.cancel();
+    const body = hasWords ? await response.text() : '';
     return { status: response.status, location, headers: response.headers, body };
   }
 
