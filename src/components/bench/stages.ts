@@ -26,3 +26,8 @@ export function stagesAround(piece: BenchPiece): RunnerStage[] {
     return { name: SHORT[stage] ?? STAGE_ACTS[stage], state, share: 0.5 };
   });
 }
+
+/** What a piece has reached, in two words at most, as its own button shows it. */
+export function stageName(stage: PieceStage): string {
+  return stage === 'waiting' ? 'Not begun' : STAGE_ACTS[stage].replace(' ready', '').replace('Edges ', '');
+}

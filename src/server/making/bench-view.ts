@@ -1,4 +1,4 @@
-import { and, desc, eq, inArray } from 'drizzle-orm';
+import { and, desc, eq, inArray, sum } from 'drizzle-orm';
 import { nextStage, STAGE_ACTS, STAGE_OPERATIONS, type PieceStage } from '../../commission/making/making';
 import { may, type Actor } from '../../commission/permissions';
 import { done, refuse, type Outcome } from '../../commission/problem';
@@ -36,11 +36,11 @@ export interface BenchCommission {
   dueOut: string | null;
   specification: string[];
   pieces: BenchPiece[];
+  gateA: 'none' | 'open' | 'approved' | 'changes';
 }
 
 /** The bench page of one commission. */
 export interface BenchPage extends BenchCommission {
-  gateA: 'none' | 'open' | 'approved' | 'changes';
   changesAsked: string | null;
   attempts: {
     number: number;
@@ -51,7 +51,9 @@ export interface BenchPage extends BenchCommission {
     cause: string | null;
   }[];
   photos: { id: string; caption: string; alt: string; stage: string; takenAt: string }[];
+  /** The last entries, and the sum of all there are. */
   minutes: { operation: string; minutes: number; at: string }[];
+  minutesInAll: number;
   timer: { operation: string; startedAt: string } | null;
 }
 
@@ -96,14 +98,17 @@ export async function readBench(
     .from(minutesLog)
     .where(eq(minutesLog.commissionId, commission.id))
     .orderBy(desc(minutesLog.at))
-    .limit(30);
+    .limit(8);
+  const [whole] = await db
+    .select({ minutes: sum(minutesLog.minutes) })
+    .from(minutesLog)
+    .where(eq(minutesLog.commissionId, commission.id));
   const [timer] = await db
     .select()
     .from(timers)
     .where(and(eq(timers.commissionId, commission.id), eq(timers.by, actor!.id)));
   return done({
-    ...(await benchOf(services, commission, all)),
-    gateA: gateState(gate?.state),
+    ...(await benchOf(services, commission, { pieces: all, gate })),
     changesAsked: gate?.state === 'changes' ? gate.note : null,
     attempts: (await readAttempts(db, commission.id)).map((attempt) => ({
       number: attempt.number,
@@ -121,6 +126,7 @@ export async function readBench(
       takenAt: photo.takenAt.toISOString(),
     })),
     minutes: log.map((entry) => ({ operation: entry.operation, minutes: entry.minutes, at: entry.at.toISOString() })),
+    minutesInAll: Number(whole?.minutes ?? 0),
     timer: timer ? { operation: timer.operation, startedAt: timer.startedAt.toISOString() } : null,
   });
 }
@@ -129,9 +135,14 @@ function gateState(state: string | undefined): BenchPage['gateA'] {
   return state === 'open' || state === 'approved' || state === 'changes' ? state : 'none';
 }
 
-async function benchOf(services: Services, row: CommissionRow, known?: PieceRow[]): Promise<BenchCommission> {
+async function benchOf(
+  services: Services,
+  row: CommissionRow,
+  known?: { pieces: PieceRow[]; gate: Awaited<ReturnType<typeof latestGate>> },
+): Promise<BenchCommission> {
   const draft = await acceptedDraft(services.db, row.id);
-  const all = known ?? (await readPieces(services.db, row.id));
+  const all = known?.pieces ?? (await readPieces(services.db, row.id));
+  const gate = known ? known.gate : await latestGate(services.db, row.id, 'A');
   return {
     ref: row.ref,
     title: row.title,
@@ -141,6 +152,7 @@ async function benchOf(services: Services, row: CommissionRow, known?: PieceRow[
     dueOut: row.leavesTo,
     specification: draft?.specification ?? [],
     pieces: all.map(benchPiece),
+    gateA: gateState(gate?.state),
   };
 }
 

@@ -15,11 +15,12 @@ export async function reach(page: Page, act: string): Promise<void> {
   await page.getByRole('button', { name: act, exact: true }).waitFor({ state: 'detached' });
 }
 
-/** Gives the casting up. */
+/** Gives the casting up, with the newest photo as the one that shows it. */
 export async function scrap(page: Page, cause: string, note: string): Promise<void> {
   await page.getByText('Something is wrong', { exact: true }).click();
   await page.getByRole('radio', { name: new RegExp(`^${cause}`) }).check();
   await page.getByLabel('Where, and how bad').fill(note);
+  await page.locator('.bench-shows').getByRole('radio').first().check();
   await page.getByRole('button', { name: 'Scrap this casting' }).click();
   await page
     .locator('.bench-list')

@@ -1,5 +1,6 @@
 import type { APIRoute } from 'astro';
 import { answer } from '../../../../server/door';
+import { benchPage } from '../../../../server/making/bench-page';
 import { finishCommission } from '../../../../server/making/finishing';
 
 export const prerender = false;
@@ -9,5 +10,6 @@ export const POST: APIRoute = async (context) => {
   const { services, user } = context.locals;
   const ref = context.params['ref'];
   const outcome = await finishCommission(services, user, ref);
-  return answer(context, outcome, { to: `/bench/${ref}`, back: `/bench/${ref}` });
+  const page = benchPage(ref, context.url);
+  return answer(context, outcome, { to: page, back: page });
 };

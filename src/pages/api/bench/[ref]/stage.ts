@@ -1,6 +1,7 @@
 import type { APIRoute } from 'astro';
 import { stageDoneSchema } from '../../../../commission/making/work-done';
 import { answer, readInput } from '../../../../server/door';
+import { benchPage } from '../../../../server/making/bench-page';
 import { reachStage } from '../../../../server/making/making';
 
 export const prerender = false;
@@ -11,5 +12,6 @@ export const POST: APIRoute = async (context) => {
   const ref = context.params['ref'];
   const input = await readInput(context, stageDoneSchema);
   const outcome = input.ok ? await reachStage(services, user, ref, input.value) : input;
-  return answer(context, outcome, { to: `/bench/${ref}`, back: `/bench/${ref}` });
+  const page = benchPage(ref, context.url);
+  return answer(context, outcome, { to: page, back: page });
 };
