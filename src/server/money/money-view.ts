@@ -4,7 +4,7 @@ import type { DealState } from '../../commission/deal';
 import { may, type Actor } from '../../commission/permissions';
 import { done, refuse, type Outcome } from '../../commission/problem';
 import { commissions } from '../db/schema/commissions';
-import { ledgerEntries, stagePayments } from '../db/schema/quotes';
+import { ledgerEntries, quotes, stagePayments } from '../db/schema/quotes';
 import { readBalances } from './ledger';
 import type { Services } from '../services';
 
@@ -27,6 +27,8 @@ export interface MoneyLine {
   customer: string;
   deal: DealState;
   balance: Balance;
+  /** The revision that was accepted. */
+  revision: number | null;
 }
 
 /** Sums of one currency, minor units. */
@@ -78,12 +80,17 @@ export async function readMoney(services: Services, actor: Actor): Promise<Outco
     rows.map((row) => row.id),
     services.now(),
   );
+  const accepted = await db
+    .select({ id: quotes.commissionId, revision: quotes.revision })
+    .from(quotes)
+    .where(eq(quotes.state, 'accepted'));
   const lines = rows.map((row) => ({
     ref: row.ref,
     title: row.title,
     customer: row.customerName,
     deal: row.deal,
     balance: ENDED.includes(row.deal) ? nothingToCome(balances.get(row.id)!) : balances.get(row.id)!,
+    revision: accepted.find((quote) => quote.id === row.id)?.revision ?? null,
   }));
   return done({ lines, totals: totalsOf(lines), moved: await lastMoved(services) });
 }
