@@ -1,13 +1,15 @@
-import { and, desc, eq, inArray, sum } from 'drizzle-orm';
+import { and, asc, desc, eq, inArray, sum } from 'drizzle-orm';
 import { nextStage, STAGE_ACTS, STAGE_OPERATIONS, type PieceStage } from '../../commission/making/making';
 import { may, type Actor } from '../../commission/permissions';
+import type { QuoteDraft } from '../../commission/pricing/quote-draft';
 import { done, refuse, type Outcome } from '../../commission/problem';
 import { findCommission, type CommissionRow } from '../commissions';
+import type { Db } from '../db/client';
 import { commissions } from '../db/schema/commissions';
-import { minutesLog, photos, timers } from '../db/schema/making';
-import { latestGate } from './gates';
-import { readAttempts, readPieces, type PieceRow } from './pieces';
-import { acceptedDraft } from '../quote/promise';
+import { gates, minutesLog, photos, pieces, timers } from '../db/schema/making';
+import type { GateRow } from './gates';
+import { readAttempts, type PieceRow } from './pieces';
+import { acceptedDrafts } from '../quote/promise';
 import type { Services } from '../services';
 
 const AT_THE_BENCH = ['booked', 'making', 'finished', 'rework'] as const;
@@ -66,7 +68,11 @@ export async function listBench(services: Services, actor: Actor): Promise<Outco
     .from(commissions)
     .where(inArray(commissions.deal, [...AT_THE_BENCH]))
     .orderBy(commissions.leavesTo, commissions.ref);
-  return done(await Promise.all(rows.map((row) => benchOf(services, row))));
+  const inHand = await readInHand(
+    services.db,
+    rows.map((row) => row.id),
+  );
+  return done(rows.map((row) => benchOf(row, inHand(row.id))));
 }
 
 /** One commission's bench page, whitelisted: a maker's session cannot get more out of it. */
@@ -79,14 +85,14 @@ export async function readBench(
   if (!found.ok) return found;
   const { db } = services;
   const commission = found.value;
-  const all = await readPieces(db, commission.id);
+  const inHand = (await readInHand(db, [commission.id]))(commission.id);
+  const { pieces: all, gate } = inHand;
   if (all.length === 0)
     return refuse(
       'not-found',
       'This commission has not come to the bench yet; it does once its first payment is booked.',
     );
   const numbers = new Map(all.map((piece) => [piece.id, piece.number]));
-  const gate = await latestGate(db, commission.id, 'A');
   const pictures = await db
     .select()
     .from(photos)
@@ -108,7 +114,7 @@ export async function readBench(
     .from(timers)
     .where(and(eq(timers.commissionId, commission.id), eq(timers.by, actor!.id)));
   return done({
-    ...(await benchOf(services, commission, { pieces: all, gate })),
+    ...benchOf(commission, inHand),
     changesAsked: gate?.state === 'changes' ? gate.note : null,
     attempts: (await readAttempts(db, commission.id)).map((attempt) => ({
       number: attempt.number,
@@ -135,14 +141,30 @@ function gateState(state: string | undefined): BenchPage['gateA'] {
   return state === 'open' || state === 'approved' || state === 'changes' ? state : 'none';
 }
 
-async function benchOf(
-  services: Services,
-  row: CommissionRow,
-  known?: { pieces: PieceRow[]; gate: Awaited<ReturnType<typeof latestGate>> },
-): Promise<BenchCommission> {
-  const draft = await acceptedDraft(services.db, row.id);
-  const all = known?.pieces ?? (await readPieces(services.db, row.id));
-  const gate = known ? known.gate : await latestGate(services.db, row.id, 'A');
+/** What the bench shows of a commission beside its own row. */
+interface InHand {
+  draft: QuoteDraft | null;
+  pieces: PieceRow[];
+  gate: GateRow | null;
+}
+
+/** Reads it for any number of commissions in three queries. */
+async function readInHand(db: Db, ids: string[]): Promise<(id: string) => InHand> {
+  const drafts = await acceptedDrafts(db, ids);
+  const all = await db.select().from(pieces).where(inArray(pieces.commissionId, ids)).orderBy(asc(pieces.number));
+  const rounds = await db
+    .select()
+    .from(gates)
+    .where(and(inArray(gates.commissionId, ids), eq(gates.gate, 'A')))
+    .orderBy(asc(gates.round));
+  return (id) => ({
+    draft: drafts.get(id) ?? null,
+    pieces: all.filter((piece) => piece.commissionId === id),
+    gate: rounds.findLast((round) => round.commissionId === id) ?? null,
+  });
+}
+
+function benchOf(row: CommissionRow, { draft, pieces: all, gate }: InHand): BenchCommission {
   return {
     ref: row.ref,
     title: row.title,

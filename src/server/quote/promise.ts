@@ -1,6 +1,6 @@
-import { and, eq } from 'drizzle-orm';
+import { and, eq, inArray } from 'drizzle-orm';
 import { countryName } from '../../commission/countries';
-import { quoteDraftSchema } from '../../commission/pricing/quote-draft';
+import { quoteDraftSchema, type QuoteDraft } from '../../commission/pricing/quote-draft';
 import { withPieces } from '../../commission/sentence';
 import type { CommissionRow } from '../commissions';
 import type { Db, Transaction } from '../db/client';
@@ -9,12 +9,17 @@ import { quotes } from '../db/schema/quotes';
 import { leavesBetween } from './promised-days';
 
 /** The accepted quote's draft, as frozen; null before acceptance. */
-export async function acceptedDraft(db: Db, commissionId: string) {
-  const [row] = await db
-    .select({ body: quotes.body })
+export async function acceptedDraft(db: Db, commissionId: string): Promise<QuoteDraft | null> {
+  return (await acceptedDrafts(db, [commissionId])).get(commissionId) ?? null;
+}
+
+/** The same for many commissions in one query, by id; those without an accepted quote are left out. */
+export async function acceptedDrafts(db: Db, commissionIds: readonly string[]): Promise<Map<string, QuoteDraft>> {
+  const rows = await db
+    .select({ id: quotes.commissionId, body: quotes.body })
     .from(quotes)
-    .where(and(eq(quotes.commissionId, commissionId), eq(quotes.state, 'accepted')));
-  return row ? quoteDraftSchema.parse((row.body as { draft: unknown }).draft) : null;
+    .where(and(inArray(quotes.commissionId, [...commissionIds]), eq(quotes.state, 'accepted')));
+  return new Map(rows.map(({ id, body }) => [id, quoteDraftSchema.parse((body as { draft: unknown }).draft)]));
 }
 
 /** The accepted quote's weeks, counted from the first payment, become the days between which the piece leaves (T12). */
