@@ -42,7 +42,7 @@ const BY_STATE: Record<DealState, (facts: TurnFacts) => WhoseTurn> = {
     turn('studio', 'Your piece is finished and paid for. We pack it and send it next.', 'Paid, to be sent')(facts),
   sent: turn(
     'courier',
-    'The carrier has your piece. It comes to your door next; somebody must be there to take it.',
+    'The carrier has your piece. Somebody must be there to take it in; then say on this page that it has arrived.',
     'With the carrier',
   ),
   delivered: turn(

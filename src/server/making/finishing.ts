@@ -130,6 +130,8 @@ export async function dispatchCommission(
       tracking: input.tracking,
       sentAt: now.toISOString(),
       adultSignature: input.adultSignature,
+      parcel: input.parcel,
+      ...(input.duties ? { duties: input.duties } : {}),
     };
     await tx.update(commissions).set({ dispatch, updatedAt: now }).where(eq(commissions.id, commission.id));
     await queueMail(tx, {
@@ -162,7 +164,12 @@ async function whyNotSend(
   const all = await readPieces(tx, commission.id);
   const unpacked = all.filter((piece) => piece.stage !== 'packed').length;
   if (unpacked > 0)
-    return refuse('conflict', `${unpacked} of ${all.length} pieces are not packed yet. The bench marks them packed.`);
+    return refuse(
+      'conflict',
+      all.length === 1
+        ? 'The piece is not packed yet. The bench marks it packed; then send it.'
+        : `${unpacked} of ${all.length} pieces are not packed yet. The bench marks them packed; then send them.`,
+    );
   const balance = await readBalance(tx, commission.id, now);
   if (balance.toComeMinor > 0)
     return refuse('conflict', 'Money is still owed on this commission, so the parcel stays here until it is received.');

@@ -35,7 +35,7 @@ export async function queueReceiptMail(
       amount: { minor: entry.amountMinor, currency },
       receiptNo: entry.receiptNo ?? 0,
       paidAt: entry.at.toISOString(),
-      ...(commission.leavesFrom && commission.leavesTo
+      ...(commission.leavesFrom && commission.leavesTo && commission.leavesTo >= now.toISOString().slice(0, 10)
         ? { leaves: { from: commission.leavesFrom, to: commission.leavesTo } }
         : {}),
       ...(booked ? { place: await placeInQueue(tx) } : {}),

@@ -45,7 +45,7 @@ const SAYS: Record<LetterId, string[]> = {
   ],
   M8: ['revision 2', 'revision 1', 'grip flange', 'no longer be accepted or paid', '£2,698.80'],
   M11: ['a3f19c0d5b7e', '£660.00', '8 December 2026', 'lapses', 'not received a payment'],
-  M12: ['£660.00', 'Receipt 31', 'number 4', 'may cancel', 'about to be started'],
+  M12: ['£660.00', 'Receipt 31', 'queue for the bench is 4', 'may cancel', 'about to be started'],
   M13: ['8 December 2026', 'held', 'bank account can take some working days'],
   M14: ['620 × 46 mm', 'TB88', 'blunt', '3 Sedge Lane', '6 December 2026'],
   M15: ['The wax beside the scale bar', 'approval fixes', 'can still change later', 'silence never counts as a yes'],

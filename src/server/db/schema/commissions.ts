@@ -60,7 +60,15 @@ export const commissions = pgTable(
     declineReason: text('decline_reason'),
     buyer: jsonb('buyer').$type<{ kind: 'consumer' | 'institution'; poNumber?: string; netDays?: number }>(),
     shipping: jsonb('shipping').$type<{ lines: string[]; country: string; phone?: string }>(),
-    dispatch: jsonb('dispatch').$type<{ carrier: string; tracking: string; sentAt: string; adultSignature: boolean }>(),
+    /** `parcel` is what it looks like from outside, `duties` what may be asked at the border. */
+    dispatch: jsonb('dispatch').$type<{
+      carrier: string;
+      tracking: string;
+      sentAt: string;
+      adultSignature: boolean;
+      parcel?: string;
+      duties?: string;
+    }>(),
     createdAt: instant('created_at').notNull(),
     updatedAt: instant('updated_at').notNull(),
   },

@@ -47,12 +47,14 @@ export const m12 = letter('M12', {
             ]}
           />
         </Part>
-        <Part title="If you change your mind">
-          <P>
-            You may cancel while the piece is being made: we keep what the work has cost by then, line by line, and send
-            the rest back.
-          </P>
-        </Part>
+        {data.toCome && (
+          <Part title="If you change your mind">
+            <P>
+              You may cancel while the piece is being made: we keep what the work has cost by then, line by line, and
+              send the rest back.
+            </P>
+          </Part>
+        )}
       </>
     ),
   }),

@@ -10,5 +10,5 @@ export const POST: APIRoute = async (context) => {
   const page = `/commissions/${context.params['ref']}`;
   const input = await readInput(context, gateDecisionSchema);
   const outcome = input.ok ? await decideGate(services, user, context.params['ref'], input.value) : input;
-  return answer(context, outcome, { to: page, back: `${page}#gate` });
+  return answer(context, outcome, { to: page, back: `${page}#gate-answer` });
 };
