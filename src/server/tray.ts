@@ -10,6 +10,8 @@ import type { Services } from './services';
 export interface TrayItem {
   id: string;
   ref: string | null;
+  /** Whose commission it is about, with a telephone number when one was ever given. */
+  customer: { name: string; phone: string | null } | null;
   message: string;
   data: Record<string, unknown>;
   createdAt: string;
@@ -21,15 +23,22 @@ const FOR_OWNER = 'The tray is for the owner.';
 export async function readTray(services: Services, actor: Actor): Promise<Outcome<TrayItem[]>> {
   if (!may(actor, 'payment:record')) return refuse(actor ? 'not-allowed' : 'sign-in-needed', FOR_OWNER);
   const rows = await services.db
-    .select({ item: tray, ref: commissions.ref })
+    .select({
+      item: tray,
+      ref: commissions.ref,
+      name: commissions.customerName,
+      phone: commissions.phone,
+      shipping: commissions.shipping,
+    })
     .from(tray)
     .leftJoin(commissions, eq(commissions.id, tray.commissionId))
     .where(isNull(tray.settledAt))
     .orderBy(desc(tray.createdAt));
   return done(
-    rows.map(({ item, ref }) => ({
+    rows.map(({ item, ref, name, phone, shipping }) => ({
       id: item.id,
       ref,
+      customer: name === null ? null : { name, phone: phone ?? shipping?.phone ?? null },
       message: item.problem.message,
       data: item.data as Record<string, unknown>,
       createdAt: item.createdAt.toISOString(),
