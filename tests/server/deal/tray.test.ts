@@ -13,7 +13,7 @@ afterAll(() => setting.drop());
 async function layInTray(ref: string | null): Promise<string> {
   const id = uuidv7();
   const commissionId = ref ? (await commission(setting, ref)).id : null;
-  const problem = { code: 'unavailable', message: 'A mail did not arrive. Check the address by phone.' };
+  const problem = { code: 'unavailable' as const, message: 'A mail did not arrive. Check the address by phone.' };
   await setting.services.db.insert(tray).values({ id, commissionId, problem, data: {}, createdAt: START });
   return id;
 }
