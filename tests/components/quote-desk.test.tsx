@@ -161,9 +161,10 @@ describe('the quote desk', () => {
   });
 
   it('keeps what was typed when another window saved first, and saves over it at the second press', async () => {
+    const elsewhere = { ...swordFromFile(), termsVersion: '2026-1', includedRounds: 3 };
     const versions: unknown[] = [];
     server.use(
-      http.get(DOOR, () => HttpResponse.json({ ok: true, value: { version: 4, revision: 1 } })),
+      http.get(DOOR, () => HttpResponse.json({ ok: true, value: { version: 4, revision: 1, draft: elsewhere } })),
       http.post(DOOR, async ({ request }) => {
         const { version } = (await request.json()) as { version: string };
         versions.push(version);
@@ -179,6 +180,8 @@ describe('the quote desk', () => {
     await person.click(screen.getByRole('button', { name: 'Save the draft' }));
     expect((await screen.findByRole('alert')).textContent).toContain('another window');
     expect(input).toHaveProperty('value', '3');
+    expect(screen.getByText('Rounds of change included: saved 3, typed 1')).toBeTruthy();
+    expect(screen.getByText(new RegExp(`^${draft.lines[0]!.label}: saved 90 min`))).toBeTruthy();
     await person.click(screen.getByRole('button', { name: 'Save the draft' }));
     await waitFor(() => expect(screen.getByRole('status').textContent).toBe('The draft is saved.'));
     expect(versions).toEqual(['0', '4']);

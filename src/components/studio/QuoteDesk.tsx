@@ -7,14 +7,14 @@ import type { QuoteDraft } from '../../commission/pricing/quote-draft';
 import { Button } from '../ui/Button';
 import { FormProblem } from '../ui/FormProblem';
 import { Notice } from '../ui/Notice';
-import { linesOfRows, readDesk, typedBefore, type DeskReading } from './desk-reading';
+import { differencesOf, linesOfRows, readDesk, typedBefore, type DeskReading } from './desk-reading';
 import type { DeskChoices } from '../../commission/pricing/desk-choices';
 import { DeskBasis } from './DeskBasis';
 import { DeskPrice } from './DeskPrice';
 import { CostSums, PriceSums } from './DeskSums';
 import { DeskTable } from './DeskTable';
 import { DeskWords } from './DeskWords';
-import { saveDesk, savedVersion } from './save-desk';
+import { saveDesk, savedDesk } from './save-desk';
 import { SendPanel } from './SendPanel';
 
 export interface QuoteDeskProps {
@@ -61,7 +61,7 @@ export function QuoteDesk(props: QuoteDeskProps) {
           <div className="mt-3">
             <FormProblem problem={standing.problem} />
           </div>
-          <Differences list={props.differences} />
+          <Differences list={standing.differences} />
           <input type="hidden" name="version" value={standing.version} readOnly />
           <DeskTable
             form={form}
@@ -147,6 +147,7 @@ interface Standing {
   problem: Problem | null;
   review: boolean;
   said: string;
+  differences: string[];
 }
 
 /** What the desk shows: its fields, how they read, and the rows of its table. */
@@ -190,8 +191,9 @@ function useDesk(props: QuoteDeskProps) {
     problem: props.problem,
     review: props.review,
     said: '',
+    differences: props.differences,
   });
-  const submit = useSubmit(props, form.getValues, standing, setStanding);
+  const submit = useSubmit(props, form.getValues, seen.reading.draft, standing, setStanding);
   return { form, ...seen, standing, submit };
 }
 
@@ -211,6 +213,7 @@ function useFollowing(form: UseFormReturn<DeskFields>, { reading, values }: Seen
 function useSubmit(
   { reference }: QuoteDeskProps,
   read: () => DeskFields,
+  typed: QuoteDraft,
   standing: Standing,
   set: (standing: Standing) => void,
 ) {
@@ -220,23 +223,32 @@ function useSubmit(
     if (act === 'reprice') return;
     event.preventDefault();
     set({ ...standing, said: 'Saving…' });
-    void save(reference, { ...read(), version: String(standing.version) }, standing, act === 'review').then((after) => {
-      set(after);
-      if (after.review) setTimeout(() => document.getElementById('send')?.focus());
-    });
+    void save(reference, { ...read(), version: String(standing.version) }, typed, standing, act === 'review').then(
+      (after) => {
+        set(after);
+        if (after.review) setTimeout(() => document.getElementById('send')?.focus());
+      },
+    );
   };
 }
 
-async function save(reference: string, fields: DeskFields, standing: Standing, review: boolean): Promise<Standing> {
+async function save(
+  reference: string,
+  fields: DeskFields,
+  typed: QuoteDraft,
+  standing: Standing,
+  review: boolean,
+): Promise<Standing> {
   const saved = await saveDesk(reference, fields);
   if (saved.ok) {
     const said = 'The draft is saved.';
-    return { version: saved.version, revision: saved.revision, problem: null, review, said };
+    return { version: saved.version, revision: saved.revision, problem: null, review, said, differences: [] };
   }
-  const version = saved.problem.code === 'stale' ? await savedVersion(reference) : null;
+  const now = saved.problem.code === 'stale' ? await savedDesk(reference) : null;
   return {
     ...standing,
-    version: version ?? standing.version,
+    version: now?.version ?? standing.version,
+    differences: now ? differencesOf(now.draft, typed) : [],
     problem: saved.problem,
     review: false,
     said: 'Not saved.',

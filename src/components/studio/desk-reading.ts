@@ -3,6 +3,7 @@ import type { DeskChoices } from '../../commission/pricing/desk-choices';
 import { deskSchema } from '../../commission/pricing/desk';
 import { applyDesk, fieldsWithTyped, type DeskFields } from '../../commission/pricing/desk-fields';
 import type { PricedQuote } from '../../commission/pricing/pricing-results';
+import { diffQuotes } from '../../commission/pricing/quote-diff';
 import { priceQuote } from '../../commission/pricing/quote';
 import type { QuoteDraft } from '../../commission/pricing/quote-draft';
 
@@ -29,6 +30,11 @@ export function readDesk(
   const errors: Record<string, string> = {};
   for (const issue of parsed.error.issues) errors[issue.path.join('.')] ??= issue.message;
   return before ? { ...before, errors } : { draft: saved, priced: priceQuote(saved), errors };
+}
+
+/** What was typed over a draft that another window has changed meanwhile, a sentence for each difference. */
+export function differencesOf(saved: QuoteDraft, typed: QuoteDraft): string[] {
+  return diffQuotes(saved, typed).map((change) => `${change.label}: saved ${change.before}, typed ${change.after}`);
 }
 
 /** The cost line that each row stands for, in the rows' order; null for a blank row and one left out. */

@@ -1,4 +1,5 @@
 import type { DeskFields } from '../../commission/pricing/desk-fields';
+import { quoteDraftSchema, type QuoteDraft } from '../../commission/pricing/quote-draft';
 import type { Problem } from '../../commission/problem';
 
 /** What came of saving: the new version, or why not. */
@@ -16,10 +17,13 @@ export async function saveDesk(reference: string, fields: DeskFields): Promise<S
   return { ok: false, problem: isProblem(answer?.problem) ? answer.problem : AWAY };
 }
 
-/** The version that is saved at the server now, or null when it cannot be asked. */
-export async function savedVersion(reference: string): Promise<number | null> {
+/** The draft that is saved at the server now and its version, or null when it cannot be asked. */
+export async function savedDesk(reference: string): Promise<{ version: number; draft: QuoteDraft } | null> {
   const answer = await ask(reference, { method: 'GET' });
-  return answer?.ok === true && isVersion(answer.value) ? answer.value.version : null;
+  if (answer?.ok !== true || !isVersion(answer.value)) return null;
+  const { version, draft } = answer.value as { version: number; draft?: unknown };
+  const parsed = quoteDraftSchema.safeParse(draft);
+  return parsed.success ? { version, draft: parsed.data } : null;
 }
 
 async function ask(reference: string, init: RequestInit): Promise<Record<string, unknown> | null> {
