@@ -34,7 +34,9 @@ export async function finishCommission(
     if (open.length > 0 || all.length === 0) {
       return refuse(
         'conflict',
-        `${open.length || 'No'} of ${all.length} pieces still have to pass inspection before the customer is told.`,
+        all.length === 1
+          ? 'The piece has to pass inspection before the customer is told that it is finished.'
+          : `${open.length} of ${all.length} pieces still have to pass inspection before the customer is told.`,
       );
     }
     const before = await timesMoved(tx, commission.id, 'T31');
