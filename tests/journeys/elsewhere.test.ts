@@ -11,7 +11,11 @@ const NOTHING = '019b0000-0000-7000-8000-000000000000';
 const FORM = 'application/x-www-form-urlencoded';
 const MULTIPART = 'multipart/form-data; boundary=b';
 const TYPES = [FORM, MULTIPART, 'text/plain', 'application/json', 'application/octet-stream', ''];
-const FROM: Record<string, string>[] = [{ origin: 'https://evil.example' }, { origin: 'null' }, { 'sec-fetch-site': 'cross-site' }];
+const FROM: Record<string, string>[] = [
+  { origin: 'https://evil.example' },
+  { origin: 'null' },
+  { 'sec-fetch-site': 'cross-site' },
+];
 
 const services = servicesOf();
 let owner: Visitor;
