@@ -28,8 +28,8 @@ export function inboxPage(world: World, query: URLSearchParams): FakeResponse {
         ><button>Show</button> ${wanted && html`<a href="/">Show all</a>`}
       </form>
       <p class="muted">
-        ${count(mails.length)}${wanted && ` to addresses with "${wanted}"`}, newest first. Addresses that begin with
-        "bounce" come back.
+        ${count(mails.length)}${wanted && ` to addresses with "${wanted}"`}${mails.length > 1 && ', newest first'}.
+        Addresses that begin with "bounce" come back.
       </p>
       ${
         mails.length > 0 &&

@@ -32,6 +32,20 @@ function keepOpen(part: Element, next: Element): void {
   });
 }
 
+/** A part without the numbers that forms draw anew on every page. */
+function shownIn(part: Element): string {
+  return part.innerHTML.replace(/name="clientId" value="[^"]*"/g, '');
+}
+
+const STOPS = 'a[href], button, summary';
+
+/** Swaps a part; a reader who stood on a link, a button or a fold of it stands on its successor. */
+function swap(part: Element, next: Element): void {
+  const stood = [...part.querySelectorAll<HTMLElement>(STOPS)].findIndex((stop) => stop === document.activeElement);
+  part.replaceChildren(...next.childNodes);
+  if (stood >= 0) part.querySelectorAll<HTMLElement>(STOPS)[stood]?.focus({ preventScroll: true });
+}
+
 async function refresh(): Promise<void> {
   if (reading) {
     again = true;
@@ -46,7 +60,7 @@ async function refresh(): Promise<void> {
       const next = fresh.querySelector(`[data-live="${part.getAttribute('data-live')}"]`);
       if (!next || isBusy(part)) continue;
       keepOpen(part, next);
-      if (next.innerHTML !== part.innerHTML) part.replaceChildren(...next.childNodes);
+      if (shownIn(next) !== shownIn(part)) swap(part, next);
     }
   } finally {
     reading = false;

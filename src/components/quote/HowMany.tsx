@@ -49,7 +49,8 @@ export function HowMany({ countries }: { countries: readonly Choice[] }) {
         registration={register('buyer')}
       />
       <Field
-        label="Finishing of each, if not our usual"
+        label="Finishing, each piece"
+        hint="Empty for our usual hours."
         name="finishHours"
         unit="hours"
         inputMode="decimal"

@@ -3,14 +3,24 @@
  * failed sending keeps everything in the form and can be repeated; a good one reloads the page.
  */
 export function sendWithProgress(form: HTMLFormElement): void {
-  const progress = form.querySelector<HTMLElement>('[data-progress]')!;
   form.addEventListener('submit', (event) => {
     event.preventDefault();
-    send(form, progress);
+    send(form);
   });
 }
 
-function send(form: HTMLFormElement, progress: HTMLElement): void {
+/** The same for every form `[data-sends-file]` of a page, also for one that comes with later news. */
+export function sendFilesWithProgress(page: Document): void {
+  page.addEventListener('submit', (event) => {
+    const form = event.target;
+    if (!(form instanceof HTMLFormElement) || !form.matches('[data-sends-file]')) return;
+    event.preventDefault();
+    send(form);
+  });
+}
+
+function send(form: HTMLFormElement): void {
+  const progress = form.querySelector<HTMLElement>('[data-progress]')!;
   const button = form.querySelector<HTMLButtonElement>('button[type=submit]')!;
   const request = new XMLHttpRequest();
   request.open('POST', form.action);

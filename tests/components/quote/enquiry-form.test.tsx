@@ -56,6 +56,7 @@ it('sends the estimate along with the words, forgets the draft and goes where th
   const goTo = vi.spyOn(window.location, 'assign').mockImplementation(() => undefined);
   answer = () => Response.json({ ok: true, value: {}, to: '/price/sent?ref=MF-0300' });
   render(<EnquiryForm start={start} />);
+  await screen.findByRole('button', { name: 'Choose files' }, { timeout: 10_000 });
   await fill(user);
   await user.click(send());
   await vi.waitFor(() => expect(goTo).toHaveBeenCalledWith('/price/sent?ref=MF-0300'));

@@ -62,6 +62,7 @@ describe('a piece from its booking to its door', () => {
     expect((await commission(studio, ref)).dispatch).toMatchObject({
       carrier: 'Estuary Parcels',
       adultSignature: true,
+      parcel: expect.any(String),
     });
     expect(codeOf(await recordDelivery(studio.services, studio.customer, ref))).toBe('ok');
     expect((await commission(studio, ref)).deal).toBe('delivered');

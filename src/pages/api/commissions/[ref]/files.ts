@@ -10,5 +10,5 @@ export const POST: APIRoute = async (context) => {
   const ref = context.params['ref'];
   const page = user?.role === 'owner' ? `/studio/commissions/${ref}` : `/commissions/${ref}`;
   const outcome = await addCommissionFile(services, user, browserId, ref, context.request);
-  return answer(context, outcome, { to: `${page}#files`, back: `${page}#files` });
+  return answer(context, outcome, { to: `${page}#files`, back: `${page}?at=files#files` });
 };
