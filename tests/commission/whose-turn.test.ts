@@ -48,7 +48,7 @@ describe('whose turn it is', () => {
     ['agreed', { payment: { ...deposit, state: 'on-its-way' } }, 'nobody', /do not pay twice/],
     ['agreed', {}, 'studio', /confirm the first payment/],
     ['booked', {}, 'studio', /place in the year is booked/],
-    ['making', { pieces }, 'studio', /your 6 pieces; next comes fettling, 3 of 6 pieces/],
+    ['making', { pieces }, 'studio', /your 6 pieces; next comes fettling for 3 of them\./],
     ['making', { pieces: { ...pieces, total: 1, done: 0 } }, 'studio', /your piece; next comes fettling\./],
     ['making', { pieces: { ...pieces, scrapped: true } }, 'studio', /pour again at no charge/],
     ['making', { pieces: { ...pieces, done: 6 } }, 'studio', /through the workshop/],

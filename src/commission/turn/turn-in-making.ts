@@ -53,8 +53,9 @@ function workTurn(facts: TurnFacts, pieces: TurnFacts['pieces']): WhoseTurn {
     );
   const next = withinSentence(pieces.nextWork ?? 'the work');
   const count = pieces.total === 1 ? '' : `, ${pieces.ahead} of ${pieces.total} pieces`;
+  const them = pieces.total === 1 || pieces.ahead === pieces.total ? '' : ` for ${pieces.ahead} of them`;
   return studio(
-    `We are working on your ${pieces.total === 1 ? 'piece' : `${pieces.total} pieces`}; next comes ${next}${count}. You need do nothing.`,
+    `We are working on your ${pieces.total === 1 ? 'piece' : `${pieces.total} pieces`}; next comes ${next}${them}. You need do nothing.`,
     `Next: ${next}${count}`,
   );
 }

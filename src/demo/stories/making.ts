@@ -1,5 +1,6 @@
 import { and, eq } from 'drizzle-orm';
 import { uuidv7 } from 'uuidv7';
+import { dayInWords } from '../../commission/turn/turn-facts';
 import { commissions } from '../../server/db/schema/commissions';
 import { attempts, pieces } from '../../server/db/schema/making';
 import { palstaves } from '../drafts';
@@ -242,7 +243,7 @@ async function holdLinstocks(world: World): Promise<void> {
   const heldUntil = new Date(world.services.now().getTime() + 47 * 24 * 60 * 60_000).toISOString().slice(0, 10);
   await move(world, LINSTOCKS, 'T35', 'owner', {
     who: 'wren',
-    sentence: `Held at the customer’s wish until ${heldUntil}. Nothing has been spent yet; the place in the year stays theirs.`,
+    sentence: `Held at the customer’s wish until ${dayInWords(heldUntil)}. Nothing has been spent yet; the place in the year stays theirs.`,
     data: { heldUntil, spentMinor: 0 },
   });
   await world.services.db

@@ -132,6 +132,8 @@ export const LETTER_DATA = {
     /** The first stage payment, and the day the agreement lapses without it. */
     payFirst: moneySchema,
     payBy: day,
+    /** An institution pays by that day on its purchase order; the agreement does not lapse by itself. */
+    onCredit: z.boolean().optional(),
   }),
   /** A stage payment was booked. `booked` marks the first one, which reserves the place. */
   M12: z.strictObject({

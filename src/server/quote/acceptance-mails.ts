@@ -21,6 +21,7 @@ export async function queueAcceptanceMails(
     acceptedAt: at.toISOString(),
     payFirst: quoteFacts(commission, quote).stages[0]!.amount,
     payBy: dayAfter(firstDue(commission.buyer, at), 0),
+    ...(commission.buyer?.netDays ? { onCredit: true } : {}),
   };
   const mail = { letter: 'M11' as const, commissionId: commission.id, at };
   await queueMail(tx, {

@@ -169,3 +169,9 @@ describe('letters in other cases', () => {
 function decode(text: string): string {
   return text.replaceAll('&amp;', '&').replaceAll('&#x27;', "'").replaceAll('&quot;', '"');
 }
+
+test('M11 to a buyer on credit says by when to pay, and threatens no lapse that will not come', async () => {
+  const { text } = await write('M11', { onCredit: true });
+  expect(text).toMatch(/purchase order/);
+  expect(text).not.toMatch(/lapses/);
+});

@@ -22,7 +22,9 @@ export const m11 = letter('M11', {
 function forCustomer(data: Accepted): Omit<LetterContent, 'details'> {
   return {
     heading: 'We have an agreement',
-    preview: `The first payment, ${moneyInWords(data.payFirst)}, reserves your place until ${dayInWords(data.payBy)}.`,
+    preview: data.onCredit
+      ? `The first payment, ${moneyInWords(data.payFirst)}, is due by ${dayInWords(data.payBy)}.`
+      : `The first payment, ${moneyInWords(data.payFirst)}, reserves your place until ${dayInWords(data.payBy)}.`,
     lead: (
       <P>
         You accepted revision {data.revision} of our quote. This is your copy of what was agreed. We have not received a
@@ -31,7 +33,9 @@ function forCustomer(data: Accepted): Omit<LetterContent, 'details'> {
     ),
     next: {
       turn: 'yours',
-      words: `Pay ${moneyInWords(data.payFirst)} on the page, by card or bank; we keep your place until ${dayInWords(data.payBy)}. Unpaid after that day the agreement lapses, and nothing is owed.`,
+      words: data.onCredit
+        ? `Pay ${moneyInWords(data.payFirst)} by ${dayInWords(data.payBy)}, on the page by card or bank. Your place is booked when it arrives; write to us if your purchase order needs something first.`
+        : `Pay ${moneyInWords(data.payFirst)} on the page, by card or bank; we keep your place until ${dayInWords(data.payBy)}. Unpaid after that day the agreement lapses, and nothing is owed.`,
     },
     link: { to: `${pageOf(data)}#money`, label: 'Pay on your commission’s page' },
   };
@@ -49,7 +53,7 @@ function forOwner(data: Accepted): Omit<LetterContent, 'details'> {
     ),
     next: {
       turn: 'nobody',
-      words: `The customer pays ${moneyInWords(data.payFirst)} by ${dayInWords(data.payBy)}; otherwise the agreement lapses by itself.`,
+      words: `The customer pays ${moneyInWords(data.payFirst)} by ${dayInWords(data.payBy)}; ${data.onCredit ? 'it has credit, so nothing lapses by itself' : 'otherwise the agreement lapses by itself'}.`,
     },
     link: { to: `/studio/commissions/${data.ref}`, label: 'Open the commission' },
   };
