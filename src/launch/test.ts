@@ -17,7 +17,9 @@ export async function run(args: string[]): Promise<number> {
   await steps.run('Looking for PostgreSQL', () => void postgresPrograms());
   if (needsStudio(args)) {
     await steps.run('Looking for Chromium', () => {
-      if (!existsSync('/usr/bin/chromium')) installFromDebian(['chromium'], 'the journeys through a real browser');
+      // A font of the system's own: without any, Chromium cannot letter what is not in the fonts we ship.
+      const browser = ['chromium', 'fonts-dejavu-core'];
+      if (!existsSync('/usr/bin/chromium')) installFromDebian(browser, 'the journeys through a real browser');
     });
     await steps.run('Building the site', buildWhenChanged);
   }
