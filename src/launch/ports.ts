@@ -33,12 +33,15 @@ export async function waitForPorts(ports: Record<string, number>, patience = 6_0
   }
 }
 
-/** A base port of which it and the next three are free just now, for tests that start the whole studio. */
+/**
+ * A base port of which it and the next three are free just now, for tests that start the whole studio. It lies below
+ * 32768, where Linux begins to take ports for outgoing connections: one of those could hold it a moment later.
+ */
 export async function freeBasePort(): Promise<number> {
   for (let attempt = 0; attempt < 200; attempt += 1) {
-    const base = 20_000 + Math.floor(Math.random() * 11_000) * 4;
+    const base = 16_000 + Math.floor(Math.random() * 4_100) * 4;
     const taken = await Promise.all([0, 1, 2, 3].map((offset) => isTaken(base + offset)));
     if (!taken.includes(true)) return base;
   }
-  throw new LaunchProblem('No four neighbouring free ports were found between 20000 and 64000.');
+  throw new LaunchProblem('No four neighbouring free ports were found between 16000 and 32400.');
 }
