@@ -1,4 +1,4 @@
-// Job.md section 2 (3): paid, owed and overdue are computed from the ledger. Worked example 1: 660.00 + 546.00 + 1,492.80.
+// The specification, section 2 (3): paid, owed and overdue are computed from the ledger. Worked example 1: 660.00 + 546.00 + 1,492.80.
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { balanceOf, type AgreedStage, type LedgerLine } from '../../src/commission/balance';

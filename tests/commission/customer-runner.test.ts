@@ -1,4 +1,4 @@
-// Job.md section 2: the stage shown to the customer is that of the least advanced piece, with how many are beyond it.
+// The specification, section 2: the stage shown to the customer is that of the least advanced piece, with how many are beyond it.
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { runnerOf, type RunnerFacts } from '../../src/commission/making/customer-runner';

@@ -1,4 +1,4 @@
-// Job.md section 2 (2): the order of a piece's stages; unused stages are struck out in the quote.
+// The specification, section 2 (2): the order of a piece's stages; unused stages are struck out in the quote.
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { costLine } from '../../src/commission/pricing/cost-lines';

@@ -1,4 +1,4 @@
-// Job.md 4.7 (one scrap: 745.99 spent, 1,271.01 to finish, 7.90 %, + 259.01; after a sound second pour + 3.79) and
+// The specification, 4.7 (one scrap: 745.99 spent, 1,271.01 to finish, 7.90 %, + 259.01; after a sound second pour + 3.79) and
 // 4.10 (six palstaves, seven poured: c2 605.49; rate 1.1934).
 import { describe, expect, test } from 'vitest';
 import { marginNow, type PourSoFar } from '../../src/commission/pricing/margin-now';
@@ -43,7 +43,7 @@ describe('the margin now expected', () => {
 
   test('loses half the fettling, 133.00, to a fault that opens late', () => {
     const [early, late] = [false, true].map((isLate) => marginNow(sword, [pour('scrapped', isLate)], SWORD_PAID));
-    // Job.md 4.7: half of seven hours at 38.00.
+    // The specification, 4.7: half of seven hours at 38.00.
     expect(late!.committedMinor - early!.committedMinor).toBe(13_300);
     expect(late!.now).toBeLessThan(early!.now);
   });

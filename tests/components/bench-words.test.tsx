@@ -1,4 +1,4 @@
-// Job.md section 1: an apprentice is "to be told what next"; section 2: no mould before gate A, packing after T31.
+// The specification, section 1: an apprentice is "to be told what next"; section 2: no mould before gate A, packing after T31.
 import { expect, test } from 'vitest';
 import { routeFor, nextStage, STAGE_OPERATIONS, STAGE_ACTS, type PieceStage } from '../../src/commission/making/making';
 import { nextInHand } from '../../src/components/bench/bench-words';

@@ -108,7 +108,7 @@ describe('the quote desk', () => {
     };
     await retype(screen.getByRole('textbox', { name: 'As cast, each' }), '900');
     await retype(screen.getByRole('textbox', { name: 'Poured, each' }), '1680');
-    // Job.md 4.1, 4.2: 146.00 x 1,680 / 8,400; 43 g at 14.60; 780 g at 4.80; 900 g at 14.60 per kg.
+    // The specification, 4.1, 4.2: 146.00 x 1,680 / 8,400; 43 g at 14.60; 780 g at 4.80; 900 g at 14.60 per kg.
     const amounts = { 'Share of a heat': '29.20', 'Metal lost in the melt': '0.63', 'Gating back to the returns': '3.74', 'Metal in the piece': '13.14' }; // prettier-ignore
     for (const [label, amount] of Object.entries(amounts)) expect(amountOf(label)).toHaveProperty('value', amount);
     const massesG = { finished: 720, cast: 900, poured: 1680 };

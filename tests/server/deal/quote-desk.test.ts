@@ -57,7 +57,7 @@ describe('the quote desk', () => {
     };
     const typed = { ...deskOf(before, 1), castMassG: 900, pouredMassG: 1680 };
     expect(codeOf(await saveDraft(services, owner, ref, typed))).toBe('ok');
-    // Job.md 4.1, 4.2: 146.00 x 1,680 / 8,400; 43 g at 14.60; 780 g at 4.80; 900 g at 14.60 per kg.
+    // The specification, 4.1, 4.2: 146.00 x 1,680 / 8,400; 43 g at 14.60; 780 g at 4.80; 900 g at 14.60 per kg.
     const followed = { heat: 2920, 'melt-loss': 63, gating: 374, metal: 1314 };
     expect(await amounts()).toMatchObject(followed);
     const lines = typed.lines.map((line) => ({

@@ -219,7 +219,7 @@ describe('messages', () => {
   });
 });
 
-// Job.md capability 41: a purchase order, net days, booked on the owner's decision of credit.
+// The specification, capability 41: a purchase order, net days, booked on the owner's decision of credit.
 describe('an institution’s terms', () => {
   const terms = (typed: Record<string, string>) => buyerTermsSchema.parse({ poNumber: '', netDays: '', ...typed });
   const set = (ref: string, typed: Record<string, string>, actor = setting.owner) =>

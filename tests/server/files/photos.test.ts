@@ -1,4 +1,4 @@
-// Job.md capability 25; reliability plan row 19: no place and no person in any served copy, orientation kept.
+// The specification, capability 25; reliability plan row 19: no place and no person in any served copy, orientation kept.
 import { readFileSync } from 'node:fs';
 import { join } from 'node:path';
 import type { APIContext } from 'astro';

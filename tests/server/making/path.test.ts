@@ -1,4 +1,4 @@
-// Job.md section 2: T14 to T16, T19 to T22, T27, T30 to T33. The route is read from the agreed quote.
+// The specification, section 2: T14 to T16, T19 to T22, T27, T30 to T33. The route is read from the agreed quote.
 import { eq } from 'drizzle-orm';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { costLine } from '../../../src/commission/pricing/cost-lines';

@@ -1,4 +1,4 @@
-// Job.md capability 28; reliability plan row 15: one winner in every race, and a repeat answers as the first did.
+// The specification, capability 28; reliability plan row 15: one winner in every race, and a repeat answers as the first did.
 import { eq } from 'drizzle-orm';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import type { Outcome } from '../../../src/commission/problem';

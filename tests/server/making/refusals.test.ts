@@ -1,4 +1,4 @@
-// Job.md section 2, "Illegal moves that must be refused and tested", and the checks of T15, T19, T21, T23, T30 and T32.
+// The specification, section 2, "Illegal moves that must be refused and tested", and the checks of T15, T19, T21, T23, T30 and T32.
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { eq } from 'drizzle-orm';
 import { scrapSchema, stageDoneSchema } from '../../../src/commission/making/work-done';

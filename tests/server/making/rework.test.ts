@@ -1,4 +1,4 @@
-// Job.md T46 to T48: a piece that came back is finished, inspected and sent a second time, and each is told anew.
+// the specification T46 to T48: a piece that came back is finished, inspected and sent a second time, and each is told anew.
 import { eq } from 'drizzle-orm';
 import { uuidv7 } from 'uuidv7';
 import { afterAll, beforeAll, expect, it } from 'vitest';

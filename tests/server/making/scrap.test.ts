@@ -1,4 +1,4 @@
-// Job.md T23, T29, capabilities 1 and 7, and section 4.3 (mean of the beta posterior: alpha / (alpha + beta)).
+// the specification T23, T29, capabilities 1 and 7, and section 4.3 (mean of the beta posterior: alpha / (alpha + beta)).
 import { eq } from 'drizzle-orm';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { SCRAP_CAUSES } from '../../../src/commission/making/making';
@@ -69,7 +69,7 @@ describe('a pour that fails', () => {
     must(await scrap(studio, ref, { cause: 'cold-shut' }));
     const [after, dearer] = [await thin(), await priced()];
     expect([after.sound - before.sound, after.failed - before.failed]).toEqual([0, 1]);
-    // Job.md 4.3 and 4.7: p0 0.75 worth four pours, so alpha = 3 + sound and beta = 1 + failed; 14 and 6 give 17 and 7.
+    // The specification, 4.3 and 4.7: p0 0.75 worth four pours, so alpha = 3 + sound and beta = 1 + failed; 14 and 6 give 17 and 7.
     const mean = ({ sound, failed }: typeof before) => (3 + sound) / (4 + sound + failed);
     expect(firm.soundPour.mean).toBeCloseTo(mean(before), 12);
     expect(dearer.soundPour.mean).toBeCloseTo(mean(after), 12);

@@ -1,4 +1,4 @@
-// Job.md capability 40: a maker cannot fetch prices, addresses or surnames. Capability 11: one customer page.
+// The specification, capability 40: a maker cannot fetch prices, addresses or surnames. Capability 11: one customer page.
 import { eq } from 'drizzle-orm';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { commissions } from '../../../src/server/db/schema/commissions';

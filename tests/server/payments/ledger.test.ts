@@ -1,4 +1,4 @@
-// Job.md capability 19: gapless numbers under 50 parallel payments; section 2: the ledger is append-only.
+// The specification, capability 19: gapless numbers under 50 parallel payments; section 2: the ledger is append-only.
 import { eq, sql } from 'drizzle-orm';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { ledgerEntries, stagePayments } from '../../../src/server/db/schema/quotes';

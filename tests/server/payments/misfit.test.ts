@@ -1,4 +1,4 @@
-// Job.md capability 6: wrong amount goes to the owner's tray; a withdrawn revision is never paid. Reliability plan row 5.
+// The specification, capability 6: wrong amount goes to the owner's tray; a withdrawn revision is never paid. Reliability plan row 5.
 import { eq } from 'drizzle-orm';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { commissions, tray } from '../../../src/server/db/schema/commissions';

@@ -1,4 +1,4 @@
-// Job.md T12 and capability 6; reliability plan row 1. Judge of shapes: the official SDK.
+// the specification T12 and capability 6; reliability plan row 1. Judge of shapes: the official SDK.
 import { eq } from 'drizzle-orm';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { pieces } from '../../../src/server/db/schema/making';
